@@ -1,0 +1,1 @@
+"""Everything that enters or leaves the program."""

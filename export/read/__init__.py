@@ -1,0 +1,1 @@
+"""What users bring: files to text and arrays."""

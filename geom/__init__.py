@@ -1,0 +1,1 @@
+"""Pure computation: designs in, neutral results out; no file is written here."""

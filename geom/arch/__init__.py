@@ -1,0 +1,1 @@
+"""Arches: hanging curves stood up, with thickness."""

@@ -1,0 +1,1 @@
+"""Hanging members: the catenary and what is made of it."""

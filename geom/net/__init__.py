@@ -1,0 +1,1 @@
+"""Hanging nets: patterns and equilibrium."""

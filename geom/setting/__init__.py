@@ -1,0 +1,1 @@
+"""What the pieces of a design share: stock, fittings, supports, shop, site, drawing."""

@@ -1,0 +1,1 @@
+"""Shop arithmetic: cutting, rounding, tolerance."""
