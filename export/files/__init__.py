@@ -1,0 +1,1 @@
+"""Outputs: one file each. See export/outputs.py for what a file here must end with."""
