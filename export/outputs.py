@@ -30,8 +30,8 @@ class Choices:
 class File:
     """One file to write: its name after `<stem>-`, its bytes in chunks, and what was checked while they were made.
 
-    `checked` is called when the last chunk has been taken; it raises CheckFailed when a check fails. `figures` are added to
-    the file's entry in the figures (a solid's `origin_m`).
+    `checked` is called when the last chunk has been taken; it raises CheckFailed when a check fails. `figures` are
+    added to the file's entry in the figures (a solid's `origin_m`).
     """
 
     name: str

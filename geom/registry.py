@@ -1,8 +1,8 @@
 """Registration of kinds and layouts: each file in `geom/kinds` ends by naming what it adds; nothing else lists them.
 
 A kind solves all its pieces of a design in one call. A layout owns no mathematics: it spreads what the user wrote into
-pieces of a kind (a run into its bays, a curtain into its strands) and gathers the solved parts into one piece again, so that
-all hangings of a design, laid out or single, are still one call of the hanging kind.
+pieces of a kind (a run into its bays, a curtain into its strands) and gathers the solved parts into one piece again, so
+that all hangings of a design, laid out or single, are still one call of the hanging kind.
 """
 
 from __future__ import annotations
@@ -60,9 +60,9 @@ class Kind:
 class Layout:
     """A layout of pieces of another kind.
 
-    `expand(piece, setting)` returns the parts to solve, or a refusal; `gather(piece, parts, setting)` makes one piece of the
-    solved parts. `part` is the word for a part in an error line ("bay 3: ..."); `place(piece, index, key)` returns the path
-    of the key that a part's fault is reported at.
+    `expand(piece, setting)` returns the parts to solve, or a refusal; `gather(piece, parts, setting)` makes one piece
+    of the solved parts. `part` is the word for a part in an error line ("bay 3: ..."); `place(piece, index, key)` returns
+    the path of the key that a part's fault is reported at.
     """
 
     name: str

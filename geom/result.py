@@ -61,9 +61,7 @@ def fixed(values: Any, *shape: int) -> Floats:  # noqa: ANN401 - anything numpy 
         If the array is not of the shape asked for.
     """
     array = np.array(values, dtype=np.float64)
-    if shape and (
-        array.ndim != len(shape) or any(w not in (-1, g) for w, g in zip(shape, array.shape, strict=True))
-    ):
+    if shape and (array.ndim != len(shape) or any(w not in (-1, g) for w, g in zip(shape, array.shape, strict=True))):
         raise ValueError(f"an array of shape {shape} is needed, not {array.shape}")
     array.setflags(write=False)
     return array
@@ -335,8 +333,8 @@ class Used:
 class Piece:
     """One solved piece of the design, or one part of it (bay, strand): a value holding all that outputs need.
 
-    `figures` is a frozen dataclass of the kind; the figures file is a walk over its fields. `facts` are the two or three
-    quantities a shop needs under the elevation. `pulls` act on supports.
+    `figures` is a frozen dataclass of the kind; the figures file is a walk over its fields. `facts` are the two or
+    three quantities a shop needs under the elevation. `pulls` act on supports.
     """
 
     mark: str
@@ -350,6 +348,7 @@ class Piece:
     intended: Quantity | None = None
     difference: Quantity | None = None
     cases: tuple[Case, ...] | None = None
+    stocks: tuple[Any, ...] = ()  # geom.setting.stock.Stock of which it is made
     parts: tuple[Piece, ...] = ()
     parts_name: str = ""  # "bays", "strands": the key the parts' figures stand under
     facts: tuple[Quantity, ...] = ()
@@ -380,3 +379,8 @@ class Result:
     cuts: tuple[Cut, ...] = ()
     stock_plan: tuple[StockPlan, ...] = ()
     cautions: tuple[Caution, ...] = field(default=())
+
+
+@dataclass(frozen=True, eq=False)
+class Rows:
+    """A table within figures: each field an array (n, ...) or a sequence of n values; leaves as a list of n objects."""

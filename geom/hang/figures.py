@@ -1,0 +1,57 @@
+"""The figures of a hanging member, as the figures file has them."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from geom.result import NAN, Degrees, Metres, MetresArray, Newtons
+
+
+@dataclass(frozen=True)
+class Neighbour:
+    """What another count of links would give; NaN where it cannot reach."""
+
+    count: int
+    sag: Metres
+    lowest_z: Metres
+    pull_horizontal: Newtons
+
+
+@dataclass(frozen=True)
+class LinksFigures:
+    """Whole links. `overall` is over the outsides of the end links, n p + 2 d."""
+
+    count: int
+    pitch: Metres
+    ends: str
+    overall: Metres
+    neighbours: tuple[Neighbour, ...]
+
+
+@dataclass(frozen=True)
+class HangingFigures:
+    """Figures of one member as hung; elevations and points in the design's axes."""
+
+    span: Metres
+    level_difference: Metres
+    pin_to_pin: Metres
+    hung_length: Metres
+    sag: Metres
+    sag_mid: Metres
+    lowest: Metres
+    below_from: Metres
+    below_to: Metres
+    clearance: Metres
+    clearance_at: Metres
+    parameter: Metres
+    pull_horizontal: Newtons
+    pull_from: Newtons
+    pull_to: Newtons
+    slope_from: Degrees
+    slope_to: Degrees
+    links: LinksFigures | None
+    loads: tuple[object, ...]
+    sag_per_length: float
+    points: MetresArray
+    lowest_at: Metres = NAN  # plan distance of the lowest point from the `from` support
+    sag_at: Metres = NAN  # plan distance of the greatest sag from the `from` support

@@ -1,0 +1,87 @@
+"""A hanging: one member of chain, rope or rod between two supports, asked for by one fact."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from typing import Annotated, ClassVar
+
+from pydantic import Field
+
+from geom.fields import Count, Elevation, Feature, PositiveForce, Ratio, Size, choice
+from geom.hang import intent
+from geom.hang.asked import Asked, Ground, wishes
+from geom.hang.filling import fill
+from geom.hang.intent import FACTS
+from geom.hang.refusals import refusals
+from geom.registry import Kind, Outcome
+from geom.setting.fittings import Fittings
+from geom.setting.ground import Clear
+from geom.setting.options import Setting
+from geom.setting.stock import StockRef
+from geom.setting.supports import SupportRef
+
+LATER = frozenset(
+    {
+        "sag_mid", "end_pull", "branch", "through", "slope_from", "slope_to", "loads", "spread", "floor", "check_load",
+    }
+)  # fmt: skip
+
+
+class Member(Feature):
+    """What a hanging and the layouts of hangings share: stock, how links are counted, fittings."""
+
+    stock: StockRef = Field(description='its stock, like "DIN 763-8" or one of your own [stock.NAME]')
+    parity: Annotated[str, choice("any", "odd", "even")] = Field("any", description="count of links wanted")
+    round: Annotated[str, choice("nearest", "up", "down")] = Field("nearest", description="how links are rounded")
+    fittings: Fittings = Field(default_factory=lambda: Fittings.model_validate({}), description="at each end")
+
+
+class Hanging(Member):
+    """The table [[hanging]]."""
+
+    one_of: ClassVar[tuple[tuple[str, ...], ...]] = (FACTS,)
+    later: ClassVar[frozenset[str]] = LATER
+
+    from_: SupportRef = Field(alias="from", description="a support's name or a point [x, y, z]")
+    to: SupportRef = Field(description="a support's name or a point [x, y, z]")
+    length: Size | None = Field(None, description="pin to pin, fittings included, before stretch")
+    links: Count | None = Field(None, description="count of links")
+    slack: Ratio | None = Field(None, description="length over the distance between the supports, like 1.12")
+    sag: Size | None = Field(None, description="greatest vertical distance under the chord")
+    lowest: Elevation | None = Field(None, description="elevation of the lowest point")
+    pull: PositiveForce | None = Field(None, description="horizontal pull")
+    clear: Clear | None = Field(None, description="ground under it and the clearance wanted")
+
+
+def asked(member: Hanging) -> Asked:
+    """Return a hanging as the solver takes it."""
+    fact = next(name for name in FACTS if getattr(member, name) is not None)
+    return Asked(
+        mark=member.mark,
+        start=member.from_,
+        end=member.to,
+        stock=member.stock,
+        fact=fact,
+        value=float(getattr(member, fact)),
+        fit_from=member.fittings.from_,
+        fit_to=member.fittings.to,
+        parity=member.parity,
+        rounding=member.round,
+        copies=member.copies,
+        ground=Ground(member.clear.profile, member.clear.at_least) if member.clear else None,
+    )
+
+
+def solve(hangings: Sequence[Hanging], setting: Setting) -> list[Outcome]:
+    """Solve all hangings of a design in one array call."""
+    if not hangings:
+        return []
+    members = [asked(hanging) for hanging in hangings]
+    wish = wishes(members)
+    made = intent.made(wish)
+    refused = refusals(members, wish, made, setting)
+    pieces = fill(members, wish, made, skip=refused.keys(), setting=setting)
+    return [refused.get(number) or pieces[number] for number in range(len(members))]
+
+
+KIND = Kind("hanging", Hanging, solve)

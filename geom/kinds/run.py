@@ -1,0 +1,178 @@
+"""A run: one member over many supports, tied at every one, so that each bay hangs by itself."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from typing import Annotated, Any, ClassVar
+
+import numpy as np
+from pydantic import BeforeValidator, Field, TypeAdapter, ValidationInfo
+
+from geom.fields import Copies, Count, Elevation, PositiveForce, Ratio, Section, Size, choice
+from geom.hang.clearance import stretch
+from geom.hang.gathering import gathered
+from geom.hang.intent import FACTS
+from geom.kinds.hanging import Hanging, Member
+from geom.registry import Layout, Outcome, Path, Refusal, refuse
+from geom.result import Piece
+from geom.setting.fittings import EndField
+from geom.setting.ground import Clear
+from geom.setting.options import Setting
+from geom.setting.supports import Support, SupportRef
+
+
+def _each(kind: Any) -> BeforeValidator:  # noqa: ANN401 - any annotated type
+    """Return the validator of a fact that is one value for every bay or a list of one each."""
+    one: TypeAdapter[float] = TypeAdapter(kind)
+
+    def read(raw: Any, info: ValidationInfo) -> tuple[float, ...]:  # noqa: ANN401 - as the file has it
+        values = raw if isinstance(raw, list) else [raw]
+        if not values:
+            raise ValueError("is an empty list; give one value, or one for each bay")
+        return tuple(one.validate_python(value, context=info.context) for value in values)
+
+    return BeforeValidator(read)
+
+
+Each = tuple[float, ...]
+
+
+class BayFittings(Section):
+    """Fittings of one bay: an end left out keeps the run's."""
+
+    from_: EndField | None = Field(None, alias="from", description="fittings at its `from` end")
+    to: EndField | None = Field(None, description="fittings at its `to` end")
+
+
+class Bay(Section):
+    """What differs in one bay of a run."""
+
+    at_most_one_of: ClassVar[tuple[tuple[str, ...], ...]] = (FACTS,)
+
+    bay: Copies = Field(description="which bay, from 1")
+    length: Size | None = Field(None, description="pin to pin in this bay")
+    links: Count | None = Field(None, description="count of links in this bay")
+    slack: Ratio | None = Field(None, description="length over the distance between its supports")
+    sag: Size | None = Field(None, description="sag of this bay")
+    lowest: Elevation | None = Field(None, description="elevation of its lowest point")
+    pull: PositiveForce | None = Field(None, description="horizontal pull of this bay")
+    parity: Annotated[str | None, choice("any", "odd", "even")] = Field(None, description="count of links wanted")
+    round: Annotated[str | None, choice("nearest", "up", "down")] = Field(None, description="how links are rounded")
+    fittings: BayFittings | None = Field(None, description="fittings of this bay")
+
+
+class Run(Member):
+    """The table [[run]]."""
+
+    one_of: ClassVar[tuple[tuple[str, ...], ...]] = (FACTS,)
+    later: ClassVar[frozenset[str]] = frozenset({"counterweight", "friction", "check_load", "loads", "spread"})
+
+    supports: tuple[SupportRef, ...] = Field(description="its supports in order, names or points")
+    over: Annotated[str, choice("fixed")] = Field("fixed", description='"fixed": tied at every support')
+    length: Annotated[Each | None, _each(Size)] = Field(None, description="pin to pin of each bay")
+    links: Annotated[Each | None, _each(Count)] = Field(None, description="count of links of each bay")
+    slack: Annotated[Each | None, _each(Ratio)] = Field(None, description="length over distance, like 1.12")
+    sag: Annotated[Each | None, _each(Size)] = Field(None, description="sag of each bay")
+    lowest: Annotated[Each | None, _each(Elevation)] = Field(None, description="elevation of the lowest points")
+    pull: Annotated[Each | None, _each(PositiveForce)] = Field(None, description="horizontal pull")
+    clear: Clear | None = Field(None, description="ground under it, measured along the run")
+    bays: tuple[Bay, ...] = Field((), description="what differs in a bay, [{ bay = 2, ... }]")
+
+    @property
+    def fact(self) -> str:
+        """Which fact was given."""
+        return next(name for name in FACTS if getattr(self, name) is not None)
+
+
+def expand(run: Run, setting: Setting) -> list[Hanging] | Refusal:
+    """Return the bays of a run as hangings."""
+    count = len(run.supports) - 1
+    if count < 1:
+        return refuse("supports", f"has {len(run.supports)} of them; give at least two, in order")
+    values = getattr(run, run.fact)
+    if len(values) not in (1, count):
+        return refuse(run.fact, f"has {len(values)} values for {count} bays; give one, or {count}")
+    wrong = _wrong_bays(run, count)
+    if wrong:
+        return wrong
+    others = {bay.bay: bay for bay in run.bays}
+    reach = plan_distances(run.supports)
+    return [_bay(run, number, values[number % len(values)], others.get(number + 1), reach) for number in range(count)]
+
+
+def _wrong_bays(run: Run, count: int) -> Refusal | None:
+    numbers = [bay.bay for bay in run.bays]
+    for place, number in enumerate(numbers):
+        if number > count:
+            return refuse("bays", f"there is no bay {number}; the run has {count}")
+        if number in numbers[:place]:
+            return refuse("bays", f"bay {number} is given twice; say all that differs in it once")
+    return None
+
+
+def plan_distances(supports: Sequence[Support]) -> np.ndarray:
+    """Return the plan distance of each support along the run, (n,) m."""
+    points = np.array([support.at for support in supports])
+    steps = np.hypot(*np.diff(points[:, :2], axis=0).T)
+    return np.concatenate([[0.0], np.cumsum(steps)])
+
+
+def _bay(run: Run, number: int, value: float, other: Bay | None, reach: np.ndarray) -> Hanging:
+    fact: str = run.fact
+    fits = run.fittings
+    parity, rounding = run.parity, run.round
+    if other is not None:
+        changed = next((name for name in FACTS if getattr(other, name) is not None), None)
+        if changed is not None:
+            fact, value = changed, getattr(other, changed)
+        parity, rounding = other.parity or parity, other.round or rounding
+        if other.fittings is not None:
+            fits = fits.model_copy(
+                update={
+                    "from_": other.fittings.from_ if other.fittings.from_ is not None else fits.from_,
+                    "to": other.fittings.to if other.fittings.to is not None else fits.to,
+                }
+            )
+    return Hanging.model_construct(
+        mark=f"{run.mark}.{number + 1}",
+        copies=run.copies,
+        from_=run.supports[number],
+        to=run.supports[number + 1],
+        stock=run.stock,
+        parity=parity,
+        round=rounding,
+        fittings=fits,
+        clear=_ground(run, float(reach[number]), float(reach[number + 1])),
+        **{fact: value},
+    )
+
+
+def _ground(run: Run, start: float, end: float) -> Clear | None:
+    if run.clear is None:
+        return None
+    part = stretch(run.clear.profile, start, end)
+    if not len(part):
+        return None
+    return Clear.model_construct(above=tuple(map(tuple, part.tolist())), at_least=run.clear.at_least)
+
+
+def gather(run: Run, parts: Sequence[Piece], setting: Setting) -> Outcome:
+    """Make one piece of a run's solved bays."""
+    values = getattr(run, run.fact)
+    return gathered(run.mark, parts, run.fact if len(values) == 1 else "", setting, copies=run.copies)
+
+
+def place(run: Run, number: int, key: Path) -> Path:
+    """Return where a bay's fault is reported: at the bay's own key, at its value in a list, or at the run's key."""
+    if key and key[0] in ("from", "to"):
+        return ("supports", number + (1 if key[0] == "to" else 0))
+    for entry, bay in enumerate(run.bays):
+        if bay.bay == number + 1 and key and getattr(bay, str(key[0]), None) is not None:
+            return ("bays", entry, *key)
+    values = getattr(run, str(key[0]), None) if key else None
+    if key and key[0] in FACTS and isinstance(values, tuple) and len(values) > 1:
+        return (*key, number)
+    return key
+
+
+LAYOUT = Layout("run", Run, "hanging", expand, gather, part="bay", place=place)
