@@ -1,0 +1,104 @@
+"""Solve designs and write drawings, solids, tables and figures.
+
+Each design gets a folder of its own, DIR/NAME/, and every file in it begins with that name.
+"""
+
+from __future__ import annotations
+
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+import click
+
+from export.cli import complain, tell
+from export.options import round_of, shared
+from export.progress import Report
+
+if TYPE_CHECKING:
+    from export.outputs import Output
+    from export.save import Saved
+    from export.work import Worked
+
+_FIGURES = "figures"  # always written, by save itself
+
+
+@click.command("export", help=__doc__)
+@shared
+@click.option(
+    "--into", required=True, type=click.Path(path_type=Path, file_okay=False), metavar="DIR", help="Where to write."
+)
+@click.option("--only", multiple=True, metavar="WORD,...", help="Write only these files (and the figures).")
+@click.option("--verify", is_flag=True, help="Read every written file back in full.")
+@click.option("--real-links", is_flag=True, help="Make solids of real links, however many there are.")
+def export(  # noqa: D103, PLR0913, PLR0917 - click hands over each option as a parameter; the help is the module's
+    designs: tuple[Path, ...],
+    into: Path,
+    only: tuple[str, ...],
+    within: str | None,
+    verify: bool,
+    real_links: bool,
+    quiet: bool,
+    debug: bool,  # looked up where failures are said
+) -> int:
+    from export.outputs import Choices
+    from export.save import Order, save
+
+    made, partial = _asked_for(only)
+
+    def act(worked: Worked, report: Report) -> None:
+        assert worked.result is not None
+        order = Order(
+            worked.result,
+            worked.path.stem,
+            worked.made_from,
+            made,
+            partial=partial,
+            choices=Choices(worked.within, real_links, report),
+            verify=verify,
+        )
+        _say(worked, save(order, into), quiet=quiet)
+
+    return round_of(designs, act, within=within, quiet=quiet, unique=True)
+
+
+def _asked_for(only: tuple[str, ...]) -> tuple[list[Output], bool]:
+    """Return the outputs to be made, and whether others are left out.
+
+    Raises
+    ------
+    click.BadParameter
+        If a word names no output.
+    """
+    from export.outputs import outputs
+    from geom.errors import near
+
+    known = outputs()
+    words = [word.strip() for part in only for word in part.split(",") if word.strip()]
+    for word in words:
+        if word not in known and word != _FIGURES:
+            names = sorted((*known, _FIGURES))
+            hint = near(word, names) or f"; known are {', '.join(names)}"
+            raise click.BadParameter(f"{word!r} is no file of ours{hint}", param_hint="--only")
+    made = [output for name, output in known.items() if not only or name in words]
+    return made, len(made) < len(known)
+
+
+def _say(worked: Worked, saved: Saved, *, quiet: bool) -> None:
+    from export.summary import cautions
+
+    if saved.disagreement:
+        complain(
+            f"{saved.folder}: was left unfinished by an earlier run or changed since ({saved.disagreement}); "
+            "it was written anew"
+        )
+    if quiet or worked.result is None:
+        return
+    tell(f"{worked.path.name} -> {saved.folder}")
+    for word, names in (("", saved.written), ("left as it was: ", saved.kept), ("removed: ", saved.removed)):
+        for name in names:
+            tell(f"  {word}{name}")
+    for line in cautions(worked.result.cautions):
+        tell(f"  {line}")
+
+
+COMMAND = export

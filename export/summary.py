@@ -1,0 +1,196 @@
+"""What `check` prints: the figures of each piece in the design's unit, pulls with what they include, cautions.
+
+Like the figures file it is a walk over the kinds' own figures, so that a new kind is shown without a line added here.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable, Iterator, Sequence
+from dataclasses import is_dataclass
+from itertools import chain
+
+from export.walk import entries
+from geom import units
+from geom.result import Case, Caution, Piece, Quantity, Result, StockPlan, Support, Unit
+
+# What a shop can measure, and a little more; the figures file has every digit.
+_LENGTH_DECIMALS = {"mm": 1, "cm": 2, "m": 4, "in": 3}
+_DECIMALS = {"N": 1, "Nm": 1, "kg": 3, "deg": 2, "C": 1, "m2": 4, "m3": 5}
+_WORDS = {"deg": "°", "C": "°C", "m2": "m2", "m3": "m3", "N_per_m": "N/m", "kg_per_m3": "kg/m3", "per_K": "/K"}
+_MOST_ROWS = 12  # of a table within a piece, and of parts shown in full: about half a screen
+_MOST_LINES = 100  # of parts shown in one line each
+
+
+def summary(result: Result) -> Iterator[str]:
+    """Yield the lines of a design's summary."""
+    yield result.title
+    for piece in result.pieces:
+        yield ""
+        yield from _piece(piece, result.unit)
+    yield from _section("pulls on supports", _supports(result.supports, result.unit))
+    yield from _section("to buy", [_stock(plan, result.unit) for plan in result.stock_plan])
+    yield from _section("cautions", cautions(result.cautions))
+    yield ""
+
+
+def cautions(found: Iterable[Caution]) -> list[str]:
+    """Return a line for each caution, with its source."""
+    return [f"caution {c.piece + ': ' if c.piece else ''}{c.text}{f' ({c.source})' if c.source else ''}" for c in found]
+
+
+def shown(value: object, unit: Unit, length_unit: str) -> str:
+    """Return one value as people read it: lengths in the design's unit, `-` where it has no meaning."""
+    match value:
+        case None:
+            return "-"
+        case bool():
+            return "yes" if value else "no"
+        case str():
+            return value
+        case int() | float():
+            return _number(float(value), unit, length_unit)
+    return ", ".join(shown(entry, unit, length_unit) for entry in value) if isinstance(value, Iterable) else str(value)
+
+
+def _number(value: float, unit: Unit, length_unit: str) -> str:
+    if not math.isfinite(value):
+        return "-"
+    if unit.suffix == "m":
+        if length_unit == "ft":
+            return units.feet_inches(value)
+        text = f"{value / units.UNITS[length_unit].metres:.{_LENGTH_DECIMALS[length_unit]}f}"
+        return f"{_tidy(text)} {length_unit}"
+    decimals = _DECIMALS.get(unit.suffix)
+    text = f"{value * unit.factor:.6g}" if decimals is None else _tidy(f"{value * unit.factor:.{decimals}f}")
+    return f"{text} {_WORDS.get(unit.suffix, unit.suffix)}".rstrip()
+
+
+def _tidy(text: str) -> str:
+    """Leave out noughts after the point, and the sign of nought."""
+    short = text.rstrip("0").rstrip(".") if "." in text else text
+    return "0" if short == "-0" else short
+
+
+def _piece(piece: Piece, unit: str) -> Iterator[str]:
+    copies = f", {piece.copies} off" if piece.copies > 1 else ""
+    yield f"{piece.mark}: {piece.kind}, {piece.what}{copies}"
+    yield from _indented(_pairs([*_asked(piece, unit), *_figures(piece.figures, unit)]))
+    yield from _indented(_tables(piece.figures, unit))
+    if piece.cases:
+        yield from _indented(_cases(piece.cases, unit))
+    yield from _indented(_parts(piece, unit))
+
+
+def _asked(piece: Piece, unit: str) -> Iterator[tuple[str, str]]:
+    if piece.intended is not None:
+        name = piece.intended.name.replace("_", " ")
+        yield f"asked for: {name}", shown(piece.intended.value, piece.intended.unit, unit)
+        if piece.difference is not None:
+            yield "made minus asked for", shown(piece.difference.value, piece.difference.unit, unit)
+    yield "mass", shown(piece.mass, Unit("kg"), unit)
+
+
+def _figures(figures: object, unit: str, prefix: str = "") -> Iterator[tuple[str, str]]:
+    """Yield name and value of each single figure, those within a group (`links`) after its name."""
+    for name, of, value in _fields(figures):
+        if is_dataclass(value) and not isinstance(value, Quantity):
+            yield from _figures(value, unit, f"{prefix}{name}: ")
+        elif isinstance(value, Quantity):
+            yield f"{prefix}{name}", shown(value.value, value.unit, unit)
+        elif isinstance(value, str | int | float):
+            text = shown(value, of, unit)
+            if text != "-":
+                yield f"{prefix}{name}", text
+
+
+def _tables(figures: object, unit: str, prefix: str = "") -> Iterator[str]:
+    """Yield each short table within a piece's figures (neighbours, bends, loads)."""
+    for name, _, value in _fields(figures):
+        if is_dataclass(value) and not isinstance(value, Quantity):
+            yield from _tables(value, unit, f"{prefix}{name}: ")
+        elif isinstance(value, tuple) and 0 < len(value) <= _MOST_ROWS and is_dataclass(value[0]):
+            yield f"{prefix}{name}"
+            yield from _indented(_aligned(_heads(value[0]), [_row(row, unit) for row in value]))
+
+
+def _fields(figures: object) -> Iterator[tuple[str, Unit, object]]:
+    if is_dataclass(figures):
+        for entry in entries(type(figures)):
+            yield entry.name.replace("_", " "), entry.unit, getattr(figures, entry.name)
+
+
+def _heads(row: object) -> list[str]:
+    return [name for name, _, _ in _fields(row)]
+
+
+def _row(row: object, unit: str) -> list[str]:
+    return [shown(value, of, unit) for _, of, value in _fields(row)]
+
+
+def _cases(cases: Sequence[Case], unit: str) -> Iterator[str]:
+    heads = ["case", "standing", "temperature", "sag", "lowest", "clearance", "horizontal", "from", "to"]
+    yield "cases (pulls in the last three columns, with what they include)"
+    yield from _indented(_aligned(heads, [_row(case, unit)[: len(heads)] for case in cases]))
+
+
+def _parts(piece: Piece, unit: str) -> Iterator[str]:
+    if len(piece.parts) <= _MOST_ROWS:
+        yield from chain.from_iterable(_piece(part, unit) for part in piece.parts)
+        return
+    for part in piece.parts[:_MOST_LINES]:
+        yield f"{part.mark}: {', '.join(f'{q.name} {shown(q.value, q.unit, unit)}' for q in part.facts)}"
+    if len(piece.parts) > _MOST_LINES:
+        yield f"and {len(piece.parts) - _MOST_LINES} more {piece.parts_name}"
+
+
+def _supports(supports: Sequence[Support], unit: str) -> list[str]:
+    newtons = Unit("N")
+    heads = ["support", "case", "standing", "pull", "along x", "along y", "along z", "moment at foot"]
+    rows = [
+        [
+            support.mark,
+            case.case,
+            case.standing,
+            shown(case.magnitude, newtons, unit),
+            *(shown(part, newtons, unit) for part in case.pull.tolist()),
+            shown(case.moment, Unit("Nm"), unit),
+        ]
+        for support in supports[:_MOST_LINES]
+        for case in support.by_case
+    ]
+    more = [f"and {len(supports) - _MOST_LINES} more"] if len(supports) > _MOST_LINES else []
+    return [*_aligned(heads, rows), *more] if rows else []
+
+
+def _stock(plan: StockPlan, unit: str) -> str:
+    found = [("needed", plan.needed), ("least possible", plan.least_possible), ("links", plan.links)]
+    said = [f"{name} {value}" for name, value in found if value is not None]
+    if math.isfinite(plan.order_length):
+        said.append(f"length {shown(plan.order_length, Unit('m'), unit)}")
+    return f"{plan.stock}: {', '.join(said)}"
+
+
+def _section(title: str, lines: Sequence[str]) -> Iterator[str]:
+    if lines:
+        yield ""
+        yield title
+        yield from _indented(lines)
+
+
+def _pairs(pairs: Iterable[tuple[str, str]]) -> list[str]:
+    found = list(pairs)
+    width = max((len(name) for name, _ in found), default=0)
+    return [f"{name:{width}}  {value}" for name, value in found]
+
+
+def _aligned(heads: Sequence[str], rows: Sequence[Sequence[str]]) -> list[str]:
+    """Return a table in plain text, two spaces between its columns."""
+    widths = [max(map(len, column)) for column in zip(heads, *rows, strict=True)]
+    return [
+        "  ".join(f"{cell:{width}}" for cell, width in zip(row, widths, strict=True)).rstrip() for row in (heads, *rows)
+    ]
+
+
+def _indented(lines: Iterable[str]) -> Iterator[str]:
+    return (f"  {line}" for line in lines)
