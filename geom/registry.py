@@ -61,8 +61,8 @@ class Layout:
     """A layout of pieces of another kind.
 
     `expand(piece, setting)` returns the parts to solve, or a refusal; `gather(piece, parts, setting)` makes one piece
-    of the solved parts. `part` is the word for a part in an error line ("bay 3: ..."); `place(piece, index, key)` returns
-    the path of the key that a part's fault is reported at.
+    of the solved parts. `part` is the word for a part in an error line ("bay 3: ..."); `place(piece, index, key)`
+    returns the path of the key that a part's fault is reported at.
     """
 
     name: str

@@ -173,7 +173,11 @@ def _sum(vectors: Iterable[np.ndarray]) -> np.ndarray:
 
 
 def _case(case: str, standing: object, pull: np.ndarray, height: float | None) -> SupportCase:
-    """Moment at the foot: the level part of the pull times the height over the foot."""
+    """Moment at the foot: the level part of the pull times the height over the foot.
+
+    Pulls that balance leave rounding, some 1e-16 of each: what is under 1e-12 of the whole is nought.
+    """
+    pull = np.where(np.abs(pull) < 1e-12 * np.abs(pull).max(), 0.0, pull)
     moment = NAN if height is None else float(np.hypot(pull[0], pull[1])) * height
     return SupportCase(case, standing, fixed(pull, 3), float(np.linalg.norm(pull)), moment)  # type: ignore[arg-type]
 

@@ -14,7 +14,8 @@ from typing import Any, TypeVar
 
 from pydantic import ValidationError
 
-from geom.design.positions import Positions, index, syntax_problem
+from geom.design.positions import Positions, index
+from geom.design.syntax import syntax_problem
 from geom.errors import Problem, near, say
 from geom.fields import Feature, Known, Section, Unusable, mark
 from geom.registry import Path, kinds

@@ -2,15 +2,18 @@
 
 from __future__ import annotations
 
+import math
+
 from geom.hang.asked import Asked
 from geom.hang.figures import HangingFigures
 from geom.result import Caution
+from geom.setting.options import Setting
 
 _PRACTICE = "common practice"
 
 
-def cautions(member: Asked, figures: HangingFigures) -> tuple[Caution, ...]:
-    """Return the cautions that apply to one member."""
+def cautions(member: Asked, figures: HangingFigures, wished: float, setting: Setting) -> tuple[Caution, ...]:
+    """Return the cautions that apply to one member; `wished` is the length that its fact asked for, m."""
     weight = member.stock.weight * figures.pin_to_pin
     found = [
         Caution(
@@ -41,7 +44,31 @@ def cautions(member: Asked, figures: HangingFigures) -> tuple[Caution, ...]:
             Caution(
                 "clearance",
                 member.mark,
-                f"The least clearance, {figures.clearance:.3f} m, is under the {member.ground.at_least:.3f} m wanted.",
+                f"The least clearance, {_length(figures.clearance, setting)}, is under the "
+                f"{_length(member.ground.at_least, setting)} wanted.",
             )
         )
+    if out_of_reach := _out_of_reach(member, figures, wished, setting):
+        found.append(out_of_reach)
     return tuple(found)
+
+
+def _out_of_reach(member: Asked, figures: HangingFigures, wished: float, setting: Setting) -> Caution | None:
+    """What was asked is more than half a link from what could be made: parity, or the reach, stood in the way."""
+    links = figures.links
+    if links is None or member.fact == "links" or abs(figures.pin_to_pin - wished) <= 0.5001 * links.pitch:
+        return None
+    if member.rounding != "nearest" and abs(figures.pin_to_pin - wished) < links.pitch:
+        return None
+    beside = [f"{n.count} give {_length(n.sag, setting)}" for n in links.neighbours if abs(n.count - links.count) <= 2]
+    count = f"an {member.parity} count" if member.parity in ("odd", "even") else "whole links that reach"
+    return Caution(
+        "out of reach", member.mark,
+        f"What was asked for is out of reach with {count}: {links.count} links are made and give a sag of "
+        f"{_length(figures.sag, setting)}; {', '.join(beside)}.",
+        "whole links, n p between the fittings",
+    )  # fmt: skip
+
+
+def _length(metres: float, setting: Setting) -> str:
+    return "none" if math.isnan(metres) else setting.stated(round(metres, 4))

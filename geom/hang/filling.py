@@ -107,6 +107,7 @@ def _columns(wish: Wish, made: Made) -> dict[str, NDArray[np.generic]]:
         "horizontal": pulls.horizontal, "at_from": pulls.at_from, "at_to": pulls.at_to,
         "down_from": pulls.vertical_from, "down_to": pulls.vertical_to, "count": made.count,
         "sag_per_length": sag_per_length(hang), "asked": wish.value,
+        "wished": made.wished.length,
     } | {f"made_{fact}": value for fact, value in differences.items()}  # fmt: skip
 
 
@@ -128,7 +129,7 @@ def _piece(member: Asked, at: Mapping[str, np.generic], setting: Setting) -> Pie
         used=used(member.stock),
         stocks=(member.stock,),
         copies=member.copies,
-        intended=_intended(member),
+        intended=wanted_of(member.fact, member.value),
         difference=_difference(member, at, setting),
         cases=(_as_hung(figures, setting),),
         facts=facts(member, figures, made_mass, setting),
@@ -137,7 +138,7 @@ def _piece(member: Asked, at: Mapping[str, np.generic], setting: Setting) -> Pie
         solids=solids,
         cuts=(_cut(member, figures, made_mass, setting),),
         pulls=_pulls(member, at, shape),
-        cautions=cautions(member, figures),
+        cautions=cautions(member, figures, float(at["wished"]), setting),
     )
 
 
@@ -279,8 +280,9 @@ def used(stock: Stock) -> Used:
     return Used(source=stock.cited, weight=stock.weight)
 
 
-def _intended(member: Asked) -> Quantity:
-    return Quantity(_INTENDED.get(member.fact, member.fact), member.value, _UNITS[member.fact])
+def wanted_of(fact: str, value: float) -> Quantity:
+    """Return what a fact asks for, as it stands in the figures: a length is pin to pin."""
+    return Quantity(_INTENDED.get(fact, fact), float(value), _UNITS[fact])
 
 
 def _difference(member: Asked, at: Mapping[str, np.generic], setting: Setting) -> Quantity:

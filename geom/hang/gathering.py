@@ -26,8 +26,7 @@ from geom.result import (
     View,
     fixed,
 )
-from geom.setting.options import Setting
-from geom.solids import Links, Solid, Sweep, Union, link_frames
+from geom.solids import Links, Solid, Sweep, Union
 
 Floats = NDArray[np.float64]
 
@@ -42,7 +41,7 @@ class RunFigures:
     lowest: Metres
 
 
-def gathered(mark: str, bays: Sequence[Piece], fact: str, setting: Setting, *, copies: int) -> Piece:
+def gathered(mark: str, bays: Sequence[Piece], wanted: Quantity | None, *, copies: int) -> Piece:
     """Return a run of its solved bays.
 
     Parameters
@@ -51,8 +50,8 @@ def gathered(mark: str, bays: Sequence[Piece], fact: str, setting: Setting, *, c
         The run's mark; bay n carries `<mark>.<n>`.
     bays : sequence of Piece
         Solved bays in order, each beginning where the one before ends.
-    fact : str
-        The fact that one value was given of for all bays, or "" if there is none.
+    wanted : Quantity or None
+        What one value was given of for all bays; a bay that was asked for something else has another intention.
     """
     figures = [bay.figures for bay in bays]
     pins = np.array([bay.pin_to_pin for bay in figures])
@@ -63,7 +62,6 @@ def gathered(mark: str, bays: Sequence[Piece], fact: str, setting: Setting, *, c
         lowest=min(bay.lowest for bay in figures),
     )
     mass = sum(bay.mass for bay in bays)
-    intended, difference = _worst(bays, fact)
     return Piece(
         mark=mark,
         kind="run",
@@ -74,8 +72,8 @@ def gathered(mark: str, bays: Sequence[Piece], fact: str, setting: Setting, *, c
         used=bays[0].used,
         stocks=bays[0].stocks,
         copies=copies,
-        intended=intended,
-        difference=difference,
+        intended=wanted,
+        difference=_worst(bays, wanted),
         parts=tuple(bays),
         parts_name="bays",
         facts=_facts(bays, whole, mass),
@@ -88,14 +86,10 @@ def gathered(mark: str, bays: Sequence[Piece], fact: str, setting: Setting, *, c
     )
 
 
-def _worst(bays: Sequence[Piece], fact: str) -> tuple[Quantity | None, Quantity | None]:
-    """What was asked of every bay, and the difference that is greatest among those it was asked of."""
-    name = {"length": "pin_to_pin"}.get(fact, fact)
-    of_fact = [bay for bay in bays if bay.intended is not None and bay.intended.name == name]
-    if not fact or not of_fact:
-        return None, None
-    worst = max((bay.difference for bay in of_fact if bay.difference), key=_size, default=None)
-    return of_fact[0].intended, worst
+def _worst(bays: Sequence[Piece], wanted: Quantity | None) -> Quantity | None:
+    """The greatest difference among the bays that were asked for what the run was asked for."""
+    differences = [bay.difference for bay in bays if bay.intended == wanted and bay.difference is not None]
+    return max(differences, key=_size, default=None) if wanted is not None else None
 
 
 def _size(quantity: Quantity) -> float:
@@ -172,7 +166,7 @@ def _elevation(bays: Sequence[Piece]) -> View:
         end = np.array([figures.span, 0.0, bay.labels[1].at[2]])
         shape = Shape(start, end, figures.parameter, figures.pin_to_pin).unfolded(x)
         lines += drawn(bay.mark, shape)
-        solids += [_unfolded(solid, shape) for solid in bay.solids]
+        solids += [_unfolded(solid, bay, shape) for solid in bay.solids]
         bay_dimensions += _bay_dimensions(shape, figures)
         marks += [Label(shape.start, bay.labels[0].text, "support")] if number == 0 else []
         marks.append(Label(shape.end, bay.labels[1].text, "support"))
@@ -194,12 +188,13 @@ def _middle(shape: Shape, figures: HangingFigures) -> Floats:
     return np.asarray(place - np.array([0.0, 0.0, figures.sag_mid]))
 
 
-def _unfolded(solid: Solid, shape: Shape) -> Solid:
-    """The same links or tube along the unfolded curve."""
+def _unfolded(solid: Solid, bay: Piece, shape: Shape) -> Solid:
+    """The same links turned about a plumb line into the view, or the same tube along the unfolded curve."""
     body = solid.body
     if isinstance(body, Links):
-        frames = link_frames(shape.curve, body.count, body.link.pitch, body.start, quarter=body.quarter)
-        return replace(solid, body=replace(body, places=frames.places, turns=frames.turns))
+        turn = np.stack([bay.frame.along, np.cross(Z_UP, bay.frame.along), Z_UP])
+        places = (body.places - bay.frame.origin) @ turn.T + shape.start
+        return replace(solid, body=replace(body, places=places, turns=turn @ body.turns))
     if isinstance(body, Sweep):
         return replace(solid, body=replace(body, curve=shape.curve))
     return solid

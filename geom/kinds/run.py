@@ -10,6 +10,7 @@ from pydantic import BeforeValidator, Field, TypeAdapter, ValidationInfo
 
 from geom.fields import Copies, Count, Elevation, PositiveForce, Ratio, Section, Size, choice
 from geom.hang.clearance import stretch
+from geom.hang.filling import wanted_of
 from geom.hang.gathering import gathered
 from geom.hang.intent import FACTS
 from geom.kinds.hanging import Hanging, Member
@@ -156,10 +157,11 @@ def _ground(run: Run, start: float, end: float) -> Clear | None:
     return Clear.model_construct(above=tuple(map(tuple, part.tolist())), at_least=run.clear.at_least)
 
 
-def gather(run: Run, parts: Sequence[Piece], setting: Setting) -> Outcome:
+def gather(run: Run, parts: Sequence[Piece], _setting: Setting) -> Outcome:
     """Make one piece of a run's solved bays."""
     values = getattr(run, run.fact)
-    return gathered(run.mark, parts, run.fact if len(values) == 1 else "", setting, copies=run.copies)
+    wanted = wanted_of(run.fact, values[0]) if len(values) == 1 else None
+    return gathered(run.mark, parts, wanted, copies=run.copies)
 
 
 def place(run: Run, number: int, key: Path) -> Path:
