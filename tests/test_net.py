@@ -2,6 +2,7 @@
 
 import re
 from collections.abc import Callable
+from functools import partial
 
 import numpy as np
 import pytest
@@ -18,7 +19,8 @@ from geom.net.shape import NetShape
 
 Array = NDArray[np.float64]
 Model = Callable[..., NetShape]
-MODELS = [force_density.straight, force_density.hanging]
+straight, hanging = partial(force_density.solve, straight=True), force_density.solve
+MODELS = [straight, hanging]
 COURT: list[list[float]] = [[0, 0, 3.5], [6, 0, 3.5], [6, 4, 3.5], [0, 4, 3.5]]
 TIPPED: list[list[float]] = [[0, 0, 3], [5, 0.5, 4], [5.5, 4.5, 3.2], [-0.5, 4, 4.4]]
 
@@ -148,7 +150,7 @@ def test_a_part_of_the_net_that_no_anchor_holds_is_named() -> None:
     network = Network(np.zeros((5, 3)), np.array([[0, 1], [2, 3], [3, 4]]), np.arange(5) == 0)
     assert unheld(network).tolist() == [2, 3, 4]
     with pytest.raises(ValueError, match="no anchor holds the part of the net with node 2"):
-        force_density.straight(network, 1.0)
+        straight(network, 1.0)
 
 
 @pytest.mark.parametrize("members", [[[0, 9]], [[-1, 0]], [[1, 1]]])
@@ -219,8 +221,8 @@ def test_a_symmetric_net_hangs_symmetrically(model: Model) -> None:
 def test_a_net_without_weight_is_the_same_hanging_and_straight() -> None:
     network = held_at(square(TIPPED, divisions=(4, 5)), np.array([0, 4, 25, 29]))
     loads = np.random.default_rng(1).normal(0, 3, (30, 3))
-    one = force_density.straight(network, 20.0, loads=loads)
-    other = force_density.hanging(network, 20.0, loads=loads)
+    one = straight(network, 20.0, loads=loads)
+    other = hanging(network, 20.0, loads=loads)
     assert np.array_equal(one.nodes, other.nodes)
     assert one.force == pytest.approx(other.force, rel=1e-12)
     assert one.length == pytest.approx(other.length, rel=1e-14)
@@ -248,7 +250,7 @@ def test_each_hanging_member_is_a_catenary_of_its_own_length_that_pulls_as_claim
     network = held_at(square(TIPPED, divisions=(3, 3)), np.array([0, 3, 12, 15]))
     m = len(network.members)
     density, weight = rng.uniform(4, 60, m), rng.uniform(2, 8, m)
-    shape = force_density.hanging(network, density, weight=weight, loads=rng.normal(0, 3, (16, 3)))
+    shape = hanging(network, density, weight=weight, loads=rng.normal(0, 3, (16, 3)))
     for k in range(m):
         start, stop = network.members[k]
         rise = float(shape.nodes[stop, 2] - shape.nodes[start, 2])
@@ -268,7 +270,7 @@ def test_members_of_one_horizontal_pull_hang_in_one_catenary(steps: list[float],
     # q = H/S of each member: cut anywhere, a catenary is a line of catenaries of the same H and w.
     weight, x = 6.0, np.concatenate([[0.0], np.cumsum(steps)])
     nodes = np.column_stack([x, np.zeros_like(x), np.linspace(1, 1 + rise, len(x))])
-    shape = force_density.hanging(line_of(nodes), pull / np.diff(x), weight=weight)
+    shape = hanging(line_of(nodes), pull / np.diff(x), weight=weight)
     a, span = pull / weight, x[-1]
     x0 = span / 2 - a * np.arcsinh(rise / (2 * a * np.sinh(span / (2 * a))))
     curve = 1 + a * (np.cosh((x - x0) / a) - np.cosh(-x0 / a))
@@ -280,7 +282,7 @@ def test_members_of_one_horizontal_pull_hang_in_one_catenary(steps: list[float],
 
 
 def test_the_lowest_point_of_a_member_between_level_nodes_is_its_own() -> None:
-    shape = force_density.hanging(line_of(np.array([[0.0, 0, 2], [4, 0, 2]])), 3.0, weight=6.0)
+    shape = hanging(line_of(np.array([[0.0, 0, 2], [4, 0, 2]])), 3.0, weight=6.0)
     # H = 12 N, a = 2 m, sag = a (cosh 1 - 1)
     assert shape.lowest == pytest.approx(2 - 2 * (np.cosh(1) - 1), rel=1e-14)
     assert shape.length == pytest.approx([4 * np.sinh(1)], rel=1e-14)
@@ -289,8 +291,8 @@ def test_the_lowest_point_of_a_member_between_level_nodes_is_its_own() -> None:
 def test_a_member_between_two_anchors_carries_only_itself() -> None:
     pattern = square(COURT, spacing=1.0)
     bare = square(COURT, spacing=1.0, edge_members=False)
-    heavy = force_density.hanging(held_at(pattern, pattern.boundary), 50.0, weight=6.0)
-    light = force_density.hanging(held_at(bare, bare.boundary), 50.0, weight=6.0)
+    heavy = hanging(held_at(pattern, pattern.boundary), 50.0, weight=6.0)
+    light = hanging(held_at(bare, bare.boundary), 50.0, weight=6.0)
     inner = np.setdiff1d(np.arange(35), pattern.boundary)
     assert heavy.nodes[inner] == pytest.approx(light.nodes[np.setdiff1d(np.arange(31), bare.boundary)], abs=1e-13)
     along = pattern.edge
@@ -313,14 +315,14 @@ def test_a_straight_member_too_heavy_for_its_force_density_is_refused() -> None:
     network = Network(np.array([[0.0, 0, 0], [0, 0, -1]]), np.array([[0, 1]]), np.array([True, False]))
     loads = np.array([[0, 0, 0], [0, 0, -2.0]])
     with pytest.raises(SolveError, match=r"too heavy|do not settle"):
-        force_density.straight(network, 2.9, weight=6.0, loads=loads)
+        straight(network, 2.9, weight=6.0, loads=loads)
     # q = 4: q v = w v/2 + 2 gives v = 2.
-    assert force_density.straight(network, 4.0, weight=6.0, loads=loads).lowest == pytest.approx(-2.0, rel=1e-11)
+    assert straight(network, 4.0, weight=6.0, loads=loads).lowest == pytest.approx(-2.0, rel=1e-11)
 
 
 def test_a_weight_far_over_the_force_density_is_refused() -> None:
     with pytest.raises(SolveError, match="times the force density hangs too deep"):
-        force_density.hanging(line_of(np.array([[0.0, 0, 0], [1, 0, 0], [2, 0, 0]])), 0.01, weight=6.0)
+        hanging(line_of(np.array([[0.0, 0, 0], [1, 0, 0], [2, 0, 0]])), 0.01, weight=6.0)
 
 
 @pytest.mark.parametrize(
@@ -337,18 +339,32 @@ def test_a_weight_far_over_the_force_density_is_refused() -> None:
 def test_values_that_mean_nothing_are_refused(density: object, weight: float, loads: Array | None, words: str) -> None:
     network = line_of(np.array([[0.0, 0, 0], [1, 0, 0], [2, 0, 0]]))
     with pytest.raises(ValueError, match=words):
-        force_density.straight(network, density, weight=weight, loads=loads)  # type: ignore[arg-type]
+        straight(network, density, weight=weight, loads=loads)  # type: ignore[arg-type]
 
 
 def test_a_net_of_anchors_only_stays_where_it_is_held() -> None:
     pattern = square(COURT, divisions=(1, 1))
-    shape = force_density.hanging(held_at(pattern, pattern.corners), 50.0, weight=6.0)
+    shape = hanging(held_at(pattern, pattern.corners), 50.0, weight=6.0)
     assert np.array_equal(shape.nodes, pattern.nodes)
     assert shape.residual == 0.0
     assert shape.reactions[:, 2].sum() == pytest.approx(-6.0 * shape.length.sum(), rel=1e-13)
 
 
 def test_results_cannot_be_written_to() -> None:
-    shape = force_density.straight(line_of(np.array([[0.0, 0, 0], [1, 0, 0], [2, 0, 0]])), 1.0)
+    shape = straight(line_of(np.array([[0.0, 0, 0], [1, 0, 0], [2, 0, 0]])), 1.0)
     with pytest.raises(ValueError, match="read-only"):
         shape.nodes[0, 0] = 1.0
+
+
+def test_straight_and_hanging_members_in_one_net_balance_and_each_keeps_its_own_law() -> None:
+    rng = np.random.default_rng(3)
+    network = held_at(square(TIPPED, divisions=(4, 4)), np.array([0, 4, 20, 24]))
+    m = len(network.members)
+    rods, density, weight = rng.random(m) < 0.5, rng.uniform(10, 60, m), rng.uniform(2, 8, m)
+    shape = force_density.solve(network, density, weight=weight, straight=rods)
+    assert shape.residual <= 1e-11 * shape.force.max()
+    assert shape.length[rods] == pytest.approx(shape.chord[rods], rel=1e-14)
+    assert shape.force[rods] == pytest.approx(np.tile(density[rods] * shape.length[rods], (2, 1)).T, rel=1e-12)
+    assert np.all(shape.length[~rods] > shape.chord[~rods])
+    assert shape.vertical[~rods].sum(axis=1) == pytest.approx(-weight[~rods] * shape.length[~rods], rel=1e-9)
+    assert shape.reactions[:, 2].sum() == pytest.approx(-np.sum(weight * shape.length), rel=1e-12)

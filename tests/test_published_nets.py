@@ -5,6 +5,7 @@ number was printed the exact one is derived here from that paper's linear equati
 """
 
 from fractions import Fraction
+from functools import partial
 
 import numpy as np
 import pytest
@@ -16,6 +17,7 @@ from geom.net.pattern import square
 from geom.net.shape import NetShape
 
 Array = NDArray[np.float64]
+straight, hanging = partial(force_density.solve, straight=True), force_density.solve
 
 
 def grid_over(side: float, meshes: int) -> tuple[Network, NDArray[np.bool_]]:
@@ -36,7 +38,7 @@ def line_of(x: Array, z: Array) -> Network:
 def under_load(network: Network, density: float, load: float) -> NetShape:
     loads = np.zeros((len(network.nodes), 3))
     loads[:, 2] = -load
-    return force_density.straight(network, density, loads=loads)
+    return straight(network, density, loads=loads)
 
 
 def test_a_line_of_ten_members_hangs_in_the_parabola_of_its_nodal_loads() -> None:
@@ -69,7 +71,7 @@ def test_a_net_without_load_spans_a_discrete_harmonic_edge_exactly(harmonic: obj
     nodes = flat.nodes.copy()
     truth = harmonic(nodes[:, 0], nodes[:, 1])
     nodes[:, 2] = np.where(free, 0.0, truth)
-    shape = force_density.straight(Network(nodes, flat.members, flat.held), 25.0)
+    shape = straight(Network(nodes, flat.members, flat.held), 25.0)
     assert shape.nodes[:, 2] == pytest.approx(truth, abs=1e-12)
     assert shape.nodes[:, :2] == pytest.approx(nodes[:, :2], abs=1e-12)
 
@@ -81,7 +83,7 @@ def test_x4_minus_6x2y2_plus_y4_is_not_discrete_harmonic_and_a_net_departs_from_
     x, y = nodes[:, 0], nodes[:, 1]
     truth = x**4 - 6 * x**2 * y**2 + y**4
     nodes[:, 2] = np.where(free, 0.0, truth)
-    shape = force_density.straight(Network(nodes, flat.members, flat.held), 25.0)
+    shape = straight(Network(nodes, flat.members, flat.held), 25.0)
     assert np.abs(shape.nodes[:, 2] - truth).max() > 1e-3
     # The departure solves the net's equations under the load q 4 h^4 at each node, by the same linear algebra.
     assert shape.nodes[:, 2] - truth == pytest.approx(
@@ -145,7 +147,7 @@ def test_force_times_length_equals_loads_times_positions(seed: int) -> None:
     m, n = len(pattern.members), len(pattern.nodes)
     loads, weight = rng.normal(0, 10, (n, 3)), rng.uniform(0, 6, m)
     network = Network(pattern.nodes, pattern.members, held)
-    shape = force_density.straight(network, rng.uniform(5, 200, m), weight=weight, loads=loads)
+    shape = straight(network, rng.uniform(5, 200, m), weight=weight, loads=loads)
     forces = loads.copy()
     halves = np.repeat(0.5 * weight * shape.length, 2)
     forces[:, 2] -= np.bincount(pattern.members.ravel(), halves, n)
@@ -161,7 +163,7 @@ def test_a_cable_of_span_20_and_sag_6_cut_into_hanging_members_is_still_that_cab
     # digits recomputed to 40 places from 5 sag = H (cosh(50/H) - 1).
     pull = 45.9447070111
     x = np.linspace(0.0, 20.0, members + 1)
-    shape = force_density.hanging(line_of(x, np.zeros(members + 1)), pull / np.diff(x), weight=5.0)
+    shape = hanging(line_of(x, np.zeros(members + 1)), pull / np.diff(x), weight=5.0)
     assert shape.lowest == pytest.approx(-6.0, rel=1e-10)
     assert shape.length.sum() == pytest.approx(24.1882034741, rel=1e-11)
     assert shape.force.max() == pytest.approx(75.9447070111, rel=1e-11)

@@ -47,7 +47,7 @@ from scipy.sparse.linalg import SuperLU
 
 from geom.errors import SolveError
 from geom.net.elevations import Upright, elevations
-from geom.net.members import hanging_shape, sinh_over, straight_shape, u_coth
+from geom.net.members import shape_of, sinh_over, u_coth
 from geom.net.network import Floats, Network
 from geom.net.shape import NetShape
 from geom.net.system import System, factored, system_of
@@ -56,67 +56,50 @@ _MOST_U = 100.0  # a member of u = 100 is 1e41 times as long as its plan distanc
 _BALANCED = 1e-6  # residual over the greatest force; rounding alone leaves under 1e-9 at 100,000 nodes
 
 
-def straight(
-    network: Network, density: ArrayLike, *, weight: ArrayLike = 0.0, loads: ArrayLike | None = None
+def solve(
+    network: Network,
+    density: ArrayLike,
+    *,
+    weight: ArrayLike = 0.0,
+    loads: ArrayLike | None = None,
+    straight: ArrayLike = False,
 ) -> NetShape:
-    """Return the net of straight members with force density `density`, each weighing half on either node.
+    """Return the net in equilibrium under force densities, its own weight and loads.
+
+    A hanging member comes out at least S sinh(u)/u long, u = w/(2 q): a density of half the weight per metre makes
+    it 1.18 times its plan distance, one of a tenth 14.8 times.
 
     Parameters
     ----------
     density : array_like, shape () or (m,), N/m
-        Force over length of each member; positive.
+        Of a straight member its force over its length, of a hanging one its horizontal pull over its plan
+        distance; positive.
     weight : array_like, shape () or (m,), N/m
         Per metre of the length found.
     loads : array_like, shape (n, 3), N
         On nodes, z up.
+    straight : array_like of bool, shape () or (m,)
+        Which members are straight, weighing half on either node; the others hang in catenaries of their own.
 
     Raises
     ------
     ValueError
         If a density is not positive, a weight is negative, or no anchor holds a part of the net.
     SolveError
-        If members are too heavy for their densities to hold.
+        If a weight per metre is over 200 times the force density, if straight members are too heavy for their
+        densities to hold, or if the shape was not reached.
     """
     system = system_of(network, density, weight, loads)
-    factor = factored(system.matrix(system.density))
-    level = _level(system, factor)
-    plan = _across(system, level)
-    upright = Upright(system, system.density, plan, 0.5 * system.weight, system.loads[:, 2])
-    return _checked(straight_shape(system, np.column_stack([level, elevations(upright, factor, level)])))
-
-
-def hanging(
-    network: Network, density: ArrayLike, *, weight: ArrayLike = 0.0, loads: ArrayLike | None = None
-) -> NetShape:
-    """Return the net of members that each hang in a catenary of their own.
-
-    A member comes out at least S sinh(u)/u long, u = w/(2 q): a density of half the weight per metre makes it
-    1.18 times its plan distance, one of a tenth 14.8 times.
-
-    Parameters
-    ----------
-    density : array_like, shape () or (m,), N/m
-        Horizontal pull over plan distance of each member; positive.
-    weight : array_like, shape () or (m,), N/m
-        Per metre of the length found.
-    loads : array_like, shape (n, 3), N
-        On nodes, z up.
-
-    Raises
-    ------
-    ValueError
-        If a density is not positive, a weight is negative, or no anchor holds a part of the net.
-    SolveError
-        If a weight per metre is over 200 times the force density, or the shape was not reached.
-    """
-    system = system_of(network, density, weight, loads)
-    u = system.weight / (2.0 * system.density)
+    lumped = np.broadcast_to(np.asarray(straight, dtype=np.bool_), system.weight.shape)
+    # A straight member is one of u = 0 that keeps its weight.
+    u = np.where(lumped, 0.0, system.weight / (2.0 * system.density))
     if np.any(u > _MOST_U):
         raise SolveError(f"a weight per metre of {2.0 * u.max():g} times the force density hangs too deep to solve")
     factor = factored(system.matrix(system.density))
     level = _level(system, factor)
-    upright, factor = _hanging_upright(system, u, _across(system, level), factor)
-    return _checked(hanging_shape(system, u, np.column_stack([level, elevations(upright, factor, level)])))
+    upright, factor = _upright(system, u, _across(system, level), factor)
+    nodes = np.column_stack([level, elevations(upright, factor, level)])
+    return _checked(shape_of(system, u, nodes, lumped))
 
 
 def _level(system: System, factor: SuperLU | None) -> Floats:
@@ -137,8 +120,8 @@ def _across(system: System, level: Floats) -> Floats:
     return np.hypot(across[:, 0], across[:, 1])
 
 
-def _hanging_upright(system: System, u: Floats, plan: Floats, factor: SuperLU | None) -> tuple[Upright, SuperLU | None]:
-    """Return the equation of the elevations of hanging members, and the factor of its matrix."""
+def _upright(system: System, u: Floats, plan: Floats, factor: SuperLU | None) -> tuple[Upright, SuperLU | None]:
+    """Return the equation of the elevations, and the factor of its matrix."""
     ratio, s, half, load = u_coth(u), sinh_over(u) * plan, 0.5 * system.weight, system.loads[:, 2]
     on_free = ratio[~system.network.held[system.network.members].all(axis=1)]
     if not on_free.size or np.ptp(on_free) == 0.0:

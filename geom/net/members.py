@@ -7,32 +7,38 @@ from __future__ import annotations
 
 import numpy as np
 
-from geom.net.network import Floats
+from geom.net.network import Flags, Floats
 from geom.net.shape import MemberEnds, NetShape, hung
 from geom.net.system import System
 
 
-def straight_shape(system: System, nodes: Floats) -> NetShape:
-    """Return the net of straight members with these nodes (n, 3), pulling q times their length."""
-    across = system.branch @ nodes
-    length = np.hypot(np.hypot(across[:, 0], across[:, 1]), across[:, 2])
-    pull = system.density[:, None] * across
-    at_nodes = system.loads.copy()
-    at_nodes[:, 2] -= abs(system.branch).T @ (0.5 * system.weight * length)
-    low = np.minimum(*nodes[:, 2][system.network.members.T])
-    return hung(system.network, nodes, MemberEnds(across, np.stack([pull, -pull], axis=1), length, low), at_nodes)
+def shape_of(system: System, u: Floats, nodes: Floats, lumped: Flags) -> NetShape:
+    """Return the net with these nodes (n, 3), m.
 
-
-def hanging_shape(system: System, u: Floats, nodes: Floats) -> NetShape:
-    """Return the net of members hanging in catenaries between these nodes (n, 3), u = w/(2 q) of each."""
-    across = system.branch @ nodes
+    Parameters
+    ----------
+    u : ndarray, shape (m,)
+        w/(2 q) of members that hang, 0 of straight ones.
+    lumped : ndarray of bool, shape (m,)
+        Members that weigh on their nodes and not on their own ends.
+    """
+    across = np.asarray(system.branch @ nodes)
     length = np.hypot(sinh_over(u) * np.hypot(across[:, 0], across[:, 1]), across[:, 2])
-    steep = np.column_stack([system.density, system.density, system.density * u_coth(u)]) * across
-    weight = np.zeros_like(steep)
-    weight[:, 2] = 0.5 * system.weight * length
-    ends = np.stack([steep - weight, -steep - weight], axis=1)
+    half = 0.5 * system.weight * length
+    at_nodes = system.loads.copy()
+    at_nodes[:, 2] -= abs(system.branch).T @ np.where(lumped, half, 0.0)
+    ends = _pulls(system, u, across, np.where(lumped, 0.0, half))
     low = _lowest(nodes[:, 2][system.network.members], ends, system.weight)
-    return hung(system.network, nodes, MemberEnds(across, ends, length, low), system.loads)
+    return hung(system.network, nodes, MemberEnds(across, ends, length, low), at_nodes)
+
+
+def _pulls(system: System, u: Floats, across: Floats, half_weight: Floats) -> Floats:
+    """Return the pulls on both ends (m, 2, 3): q along, q u coth u up, less half the weight at each."""
+    steep = system.density[:, None] * across
+    steep[:, 2] *= u_coth(u)
+    ends = np.stack([steep, -steep], axis=1)
+    ends[:, :, 2] -= half_weight[:, None]
+    return ends
 
 
 def _lowest(z: Floats, ends: Floats, weight: Floats) -> Floats:
@@ -43,7 +49,7 @@ def _lowest(z: Floats, ends: Floats, weight: Floats) -> Floats:
     """
     inside = (ends[:, :, 2] < 0.0).all(axis=1)
     horizontal, vertical = np.hypot(ends[inside, 0, 0], ends[inside, 0, 1]), ends[inside, 0, 2]
-    low: Floats = z.min(axis=1)
+    low = np.minimum(z[:, 0], z[:, 1])
     low[inside] = z[inside, 0] - vertical**2 / (weight[inside] * (np.hypot(horizontal, vertical) + horizontal))
     return low
 
