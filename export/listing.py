@@ -8,7 +8,7 @@ from collections.abc import Iterable, Iterator, Sequence
 import numpy as np
 from numpy.typing import NDArray
 
-from geom.result import NAN, Column, Piece, Result, StockPattern, Table, Unit
+from geom.result import NAN, Column, PatternCut, Piece, Result, StockPattern, StockPlan, Table, Unit
 
 _NONE = Unit("")
 _METRES = Unit("m")
@@ -35,27 +35,32 @@ def cuts(result: Result) -> Table:
 
 
 def stock_plan(result: Result) -> Table:
-    """Return what to buy and how to cut it: a row for each pattern, one for a stock without patterns."""
-    rows = [(plan, pattern) for plan in result.stock_plan for pattern in plan.patterns or (None,)]
+    """Return what to buy and how to cut it: a row for each mark on each way of cutting, or one for the stock."""
+    rows = [row for plan in result.stock_plan for row in _plan_rows(plan)]
     return Table(
         "stock plan",
         (
-            _text("stock", "stock", (plan.stock for plan, _ in rows)),
-            _numbers("needed", _NONE, "reels or bars needed", (plan.needed for plan, _ in rows)),
-            _numbers("least_possible", _NONE, "least possible", (plan.least_possible for plan, _ in rows)),
-            _numbers("order_length", _METRES, "order length", (plan.order_length for plan, _ in rows)),
-            _numbers("order_links", _NONE, "links bought", (plan.links for plan, _ in rows)),
-            _numbers("links_lost", _NONE, "links lost to cuts", (plan.links_lost for plan, _ in rows)),
-            _numbers("length", _METRES, "length of a reel", (p.length if p else NAN for _, p in rows)),
-            _numbers("count", _NONE, "reels cut so", (p.count if p else None for _, p in rows)),
-            _text("cuts", "cut of each", (_pattern(p) if p else None for _, p in rows)),
-            _numbers("left", _METRES, "left of each", (p.left if p else NAN for _, p in rows)),
+            _text("stock", "stock", (plan.stock for plan, _, _ in rows)),
+            _numbers("needed", _NONE, "reels or bars needed", (plan.needed for plan, _, _ in rows)),
+            _numbers("least_possible", _NONE, "least possible", (plan.least_possible for plan, _, _ in rows)),
+            _numbers("order_length", _METRES, "order length", (plan.order_length for plan, _, _ in rows)),
+            _numbers("order_links", _NONE, "links bought", (plan.links for plan, _, _ in rows)),
+            _numbers("links_lost", _NONE, "links lost to cuts", (plan.links_lost for plan, _, _ in rows)),
+            _numbers("length", _METRES, "length of a reel", (p.length if p else None for _, p, _ in rows)),
+            _numbers("count", _NONE, "reels cut so", (p.count if p else None for _, p, _ in rows)),
+            _numbers("left", _METRES, "left of each", (p.left if p else None for _, p, _ in rows)),
+            _text("mark", "mark", (c.mark if c else None for _, _, c in rows)),
+            _numbers("on_each", _NONE, "of it on each", (c.count if c else None for _, _, c in rows)),
         ),
     )
 
 
-def _pattern(pattern: StockPattern) -> str:
-    return ", ".join(f"{cut.count} x {cut.mark}" for cut in pattern.cuts)
+def _plan_rows(plan: StockPlan) -> Iterator[tuple[StockPlan, StockPattern | None, PatternCut | None]]:
+    if not plan.patterns:
+        yield plan, None, None
+    for pattern in plan.patterns:
+        for cut in pattern.cuts:
+            yield plan, pattern, cut
 
 
 def supports(result: Result) -> Table:

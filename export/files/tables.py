@@ -19,6 +19,7 @@ from geom.result import Result, Table
 
 _LAST_ROW = 1_048_576  # rows of a sheet, ECMA-376 part 1, in the limits the format's own applications keep
 _LONGEST_NAME = 31  # characters of a sheet's name, likewise
+_LONGEST_TEXT = 32_767  # characters of a cell, likewise
 _CHUNK = 1 << 20
 # A workbook states when it was made; the clock would make every run differ. The first day of the ZIP format's calendar.
 _MADE = datetime.datetime(1980, 1, 1)
@@ -92,11 +93,16 @@ def _write_sheet(sheet: Any, columns: Sequence[Field], bold: object) -> int:  # 
         sheet.write_string(0, number, column.heading, bold)
         sheet.set_column(number, number, _width(column))
         for row, value in enumerate(column.values, start=1):
-            if isinstance(value, str):
-                sheet.write_string(row, number, value)
-            elif value is not None:
+            if isinstance(value, int | float):
                 sheet.write_number(row, number, value)
+            elif value:
+                sheet.write_string(row, number, _clipped(value))
     return len(columns[0].values)
+
+
+def _clipped(text: str) -> str:
+    """Return what a cell can hold of a text."""
+    return text if len(text) <= _LONGEST_TEXT else text[: _LONGEST_TEXT - 3] + "..."
 
 
 def _width(column: Field) -> int:
@@ -147,7 +153,7 @@ def _compare(where: str, columns: Sequence[Field], found: dict[str, Cell]) -> in
     from xlsxwriter.utility import xl_rowcol_to_cell
 
     expected: dict[str, Cell] = {
-        xl_rowcol_to_cell(row, number): value
+        xl_rowcol_to_cell(row, number): _clipped(value) if isinstance(value, str) else value
         for number, column in enumerate(columns)
         for row, value in enumerate((column.heading, *column.values))
         if value not in (None, "")
