@@ -77,6 +77,7 @@ def _guarded(run: Callable[[], object]) -> int:
     """Run a command and turn whatever stops it into one line and an exit code."""
     try:
         code = run()
+        sys.stdout.flush()
     except click.exceptions.NoArgsIsHelpError as error:
         error.show()
         return WRONG

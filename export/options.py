@@ -93,8 +93,10 @@ def _one(path: Path, within: str | None, act: Callable[[Worked], None]) -> int:
         complain(f"{path.name}:1: {error}")
         return WRONG
     except (CannotSave, CheckFailed) as error:
-        complain(str(error))
+        complain(f"{path.name}: {error}")
         return FAILED
+    except BrokenPipeError:  # not this design's: nobody reads on
+        raise
     except Exception as error:  # noqa: BLE001 - each design stands alone
         complain(f"{path.name}: {failure(error)}")
         return FAILED

@@ -103,10 +103,14 @@ class Staging:
     def write(self, name: str, chunks: Iterable[bytes]) -> str:
         """Write a file chunk by chunk and return its SHA-256, worked out on the way."""
         digest = hashlib.sha256()
-        with self.path(name).open("xb") as file:
-            for chunk in chunks:
-                file.write(chunk)
-                digest.update(chunk)
+        try:
+            with self.path(name).open("xb") as file:
+                for chunk in chunks:
+                    file.write(chunk)
+                    digest.update(chunk)
+        except OSError as error:
+            error.filename = error.filename or str(self.path(name))  # a full disk does not say where
+            raise
         return digest.hexdigest()
 
     def record(self, hashes: Mapping[str, Iterable[str]]) -> None:

@@ -8,7 +8,6 @@ from __future__ import annotations
 import math
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import is_dataclass
-from itertools import chain
 
 from export.walk import entries
 from geom import units
@@ -30,13 +29,18 @@ def summary(result: Result) -> Iterator[str]:
         yield from _piece(piece, result.unit)
     yield from _section("pulls on supports", _supports(result.supports, result.unit))
     yield from _section("to buy", [_stock(plan, result.unit) for plan in result.stock_plan])
-    yield from _section("cautions", cautions(result.cautions))
+    yield from _section("cautions", [_caution(caution) for caution in result.cautions])
     yield ""
 
 
 def cautions(found: Iterable[Caution]) -> list[str]:
     """Return a line for each caution, with its source."""
-    return [f"caution {c.piece + ': ' if c.piece else ''}{c.text}{f' ({c.source})' if c.source else ''}" for c in found]
+    return [f"caution: {_caution(caution)}" for caution in found]
+
+
+def _caution(caution: Caution) -> str:
+    piece = f"{caution.piece}: " if caution.piece else ""
+    return f"{piece}{caution.text}{f' ({caution.source})' if caution.source else ''}"
 
 
 def shown(value: object, unit: Unit, length_unit: str) -> str:
@@ -75,10 +79,13 @@ def _tidy(text: str) -> str:
 def _piece(piece: Piece, unit: str) -> Iterator[str]:
     copies = f", {piece.copies} off" if piece.copies > 1 else ""
     yield f"{piece.mark}: {piece.kind}, {piece.what}{copies}"
-    yield from _indented(_pairs([*_asked(piece, unit), *_figures(piece.figures, unit)]))
+    standing = f" ({piece.cases[0].standing})" if piece.cases else ""
+    figures = (
+        (name, f"{text}{standing}" if text.endswith(" N") else text) for name, text in _singles(piece.figures, unit)
+    )
+    yield from _indented(_pairs([*_asked(piece, unit), *figures]))
     yield from _indented(_tables(piece.figures, unit))
-    if piece.cases:
-        yield from _indented(_cases(piece.cases, unit))
+    yield from _indented(_cases([("", case) for case in piece.cases or ()], unit))
     yield from _indented(_parts(piece, unit))
 
 
@@ -91,11 +98,11 @@ def _asked(piece: Piece, unit: str) -> Iterator[tuple[str, str]]:
     yield "mass", shown(piece.mass, Unit("kg"), unit)
 
 
-def _figures(figures: object, unit: str, prefix: str = "") -> Iterator[tuple[str, str]]:
+def _singles(figures: object, unit: str, prefix: str = "") -> Iterator[tuple[str, str]]:
     """Yield name and value of each single figure, those within a group (`links`) after its name."""
     for name, of, value in _fields(figures):
         if is_dataclass(value) and not isinstance(value, Quantity):
-            yield from _figures(value, unit, f"{prefix}{name}: ")
+            yield from _singles(value, unit, f"{prefix}{name}: ")
         elif isinstance(value, Quantity):
             yield f"{prefix}{name}", shown(value.value, value.unit, unit)
         elif isinstance(value, str | int | float):
@@ -128,20 +135,44 @@ def _row(row: object, unit: str) -> list[str]:
     return [shown(value, of, unit) for _, of, value in _fields(row)]
 
 
-def _cases(cases: Sequence[Case], unit: str) -> Iterator[str]:
-    heads = ["case", "standing", "temperature", "sag", "lowest", "clearance", "horizontal", "from", "to"]
-    yield "cases (pulls in the last three columns, with what they include)"
-    yield from _indented(_aligned(heads, [_row(case, unit)[: len(heads)] for case in cases]))
+def _cases(cases: Sequence[tuple[str, Case]], unit: str) -> Iterator[str]:
+    """Yield a table of cases, each after the mark of its part."""
+    if cases:
+        heads = [
+            "part",
+            "case",
+            "pulls include",
+            "temperature",
+            "sag",
+            "lowest",
+            "clearance",
+            "horizontal",
+            "from",
+            "to",
+        ]
+        rows = [[mark, *_row(case, unit)[: len(heads) - 1]] for mark, case in cases]
+        part = 0 if any(mark for mark, _ in cases) else 1
+        yield "cases"
+        yield from _indented(_aligned(heads[part:], [row[part:] for row in rows]))
 
 
 def _parts(piece: Piece, unit: str) -> Iterator[str]:
-    if len(piece.parts) <= _MOST_ROWS:
-        yield from chain.from_iterable(_piece(part, unit) for part in piece.parts)
+    """Yield a table of the parts' facts, one of their cases, and their short tables, equal ones once."""
+    shown_parts = piece.parts[:_MOST_LINES]
+    if not shown_parts:
         return
-    for part in piece.parts[:_MOST_LINES]:
-        yield f"{part.mark}: {', '.join(f'{q.name} {shown(q.value, q.unit, unit)}' for q in part.facts)}"
+    yield piece.parts_name
+    heads = ["mark", *(fact.name for fact in shown_parts[0].facts)]
+    rows = [[part.mark, *(shown(fact.value, fact.unit, unit) for fact in part.facts)] for part in shown_parts]
+    yield from _indented(_aligned(heads, [row for row in rows if len(row) == len(heads)]))
     if len(piece.parts) > _MOST_LINES:
-        yield f"and {len(piece.parts) - _MOST_LINES} more {piece.parts_name}"
+        yield f"  and {len(piece.parts) - _MOST_LINES} more"
+    yield from _cases([(part.mark, case) for part in shown_parts for case in part.cases or ()], unit)
+    tables: dict[tuple[str, ...], list[str]] = {}
+    for part in shown_parts:
+        tables.setdefault(tuple(_tables(part.figures, unit)), []).append(part.mark)
+    for lines, marks in list(tables.items())[:_MOST_ROWS]:
+        yield from (lines and (", ".join(marks), *_indented(lines)))
 
 
 def _supports(supports: Sequence[Support], unit: str) -> list[str]:
