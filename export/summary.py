@@ -124,7 +124,7 @@ def _tables(figures: object, unit: str, prefix: str = "") -> Iterator[str]:
 def _fields(figures: object) -> Iterator[tuple[str, Unit, object]]:
     if is_dataclass(figures):
         for entry in entries(type(figures)):
-            yield entry.name.replace("_", " "), entry.unit, getattr(figures, entry.name)
+            yield entry.name.replace("_", " ").strip(), entry.unit, getattr(figures, entry.name)
 
 
 def _heads(row: object) -> list[str]:

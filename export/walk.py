@@ -36,8 +36,9 @@ class Entry:
 
     @property
     def key(self) -> str:
-        """The key, `sag_m`."""
-        return f"{self.name}_{self.unit.suffix}" if self.unit.suffix else self.name
+        """The key, `sag_m`; a name that Python keeps for itself has an underscore after it that does not leave."""
+        name = self.name.removesuffix("_")
+        return f"{name}_{self.unit.suffix}" if self.unit.suffix else name
 
 
 def plain(value: object, factor: float = 1.0) -> Plain:

@@ -135,6 +135,16 @@ def test_rows_of_arrays_leave_as_a_list_of_objects() -> None:
     ]
 
 
+@dataclass(frozen=True)
+class Between:
+    from_: str
+    from_reach: Metres
+
+
+def test_a_name_that_python_keeps_for_itself_leaves_without_its_underscore() -> None:
+    assert plain(Between("N1", 0.5)) == {"from": "N1", "from_reach_m": 0.5}
+
+
 def test_rows_of_unequal_lengths_are_refused() -> None:
     with pytest.raises(ValueError, match="shorter"):
         plain(Members(("a", "b"), np.zeros((1, 2), np.int64), fixed([1.0, 2.0]), fixed([1.0, 2.0]), (1, 2)))
