@@ -1,0 +1,151 @@
+"""Views in rows from the top left in the order of the design, plan under them, notes at the left foot."""
+
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass, replace
+
+from export.picture.panels import lowered
+from export.picture.scale import Sheet
+from export.picture.sizes import Sizes
+from export.picture.values import Box, Notes, Panel, around, shifted
+
+_TENTH = 0.1  # of the larger of two pieces: the least distance between them, if that is more than the text's
+_BETWEEN = 2.0  # between all that is printed of two views, in heights of the notes' text
+_FEED = 40.0  # between sheets, in heights of the notes' text, when one is not enough
+
+
+@dataclass(frozen=True)
+class Arranged:
+    """Everything in place, the upper left corner of the first sheet's drawing space at the origin."""
+
+    panels: tuple[Panel, ...]
+    notes: Notes
+    box: Box
+    sheets: int = 1
+
+
+@dataclass(frozen=True)
+class Foot:
+    """What is arranged round the views: the heading over them, plan and notes under them."""
+
+    heading: Panel | None
+    plan: Panel | None
+    notes: Notes
+
+
+@dataclass(frozen=True)
+class _Row:
+    """Panels side by side, their geometry standing on y = 0."""
+
+    panels: tuple[Panel, ...]
+
+    @property
+    def box(self) -> Box:
+        return around(*(shifted(panel.box, panel.at) for panel in self.panels))
+
+    @property
+    def core(self) -> Box:
+        return around(*(shifted(panel.core, panel.at) for panel in self.panels))
+
+
+def arrange(views: Sequence[Panel], foot: Foot, sheet: Sheet, sizes: Sizes, *, feed: bool = False) -> Arranged | None:
+    """Return views, plan and notes in place on a sheet, or None where they do not fit it.
+
+    With `feed` as many sheets are taken as it takes, one under another; then None only where one view is larger than one.
+    """
+    blocks = [*_rows(views, sheet.width, sizes), *_foot(foot.plan, foot.notes, sheet.width, sizes)]
+    if foot.heading is not None:
+        blocks.insert(0, _Row((replace(foot.heading, at=(-foot.heading.box[0], -foot.heading.box[1])),)))
+    if any(block.box[2] - block.box[0] > sheet.width for block in blocks):
+        return None
+    placed, sheets = _stacked(blocks, sheet, sizes, feed=feed)
+    if placed is None:
+        return None
+    panels = tuple(panel for row in placed for panel in row.panels if panel.kind != "notes")
+    at = next(panel.at for row in placed for panel in row.panels if panel.kind == "notes")
+    written = replace(foot.notes, at=at)
+    box = around(*(shifted(panel.box, panel.at) for panel in panels), shifted(written.box, at))
+    return Arranged(panels, written, box, sheets)
+
+
+_TEXT = ("heading", "notes")  # kinds that are text alone; the notes have a stand-in among the panels
+
+
+def apart(one: Panel, other: Panel, sizes: Sizes) -> float:
+    """Return the least distance between the geometry of two views."""
+    larger = max(max(p.core[2] - p.core[0], p.core[3] - p.core[1]) for p in (one, other))
+    return max(sizes.apart, _TENTH * larger)
+
+
+def _rows(panels: Sequence[Panel], width: float, sizes: Sizes) -> Iterator[_Row]:
+    row: list[Panel] = []
+    for panel in panels:
+        placed = _beside(row, panel, sizes)
+        if row and placed.at[0] + placed.box[2] > width:
+            yield _levelled(row, sizes)
+            row, placed = [], _beside([], panel, sizes)
+        row.append(placed)
+    if row:
+        yield _levelled(row, sizes)
+
+
+def _beside(row: Sequence[Panel], panel: Panel, sizes: Sizes) -> Panel:
+    """Put a panel to the right of a row, its geometry's foot at 0; the first one at the left edge."""
+    x = -panel.box[0]
+    if row:
+        last = row[-1]
+        by_core = last.at[0] + last.core[2] + apart(last, panel, sizes) - panel.core[0]
+        by_box = max(one.at[0] + one.box[2] for one in row) + _BETWEEN * sizes.note - panel.box[0]
+        x = max(by_core, by_box)
+    return replace(panel, at=(x, -panel.core[1]))
+
+
+def _levelled(row: Sequence[Panel], sizes: Sizes) -> _Row:
+    """Bring the titles of a row to one height."""
+    tops = [panel.at[1] + max((line.box[3] for line in panel.titles), default=0.0) for panel in row]
+    lowest = min(tops)
+    return _Row(tuple(lowered(panel, top - lowest) for panel, top in zip(row, tops, strict=True)))
+
+
+def _foot(plan: Panel | None, notes: Notes, width: float, sizes: Sizes) -> list[_Row]:
+    """Notes to the left, the plan to their right where it fits, else over them."""
+    left, bottom, right, top = notes.box
+    stand_in = Panel("", "notes", 1.0, (), core=notes.box, box=notes.box, at=(-left, -bottom))
+    if plan is None:
+        return [_Row((stand_in,))]
+    x = right - left + sizes.apart - plan.box[0]
+    if x + plan.box[2] <= width:
+        # feet level: the plan's title stands on the line of the last note
+        return [_Row((stand_in, replace(plan, at=(x, -plan.box[1]))))]
+    return [_levelled([_beside([], plan, sizes)], sizes), _Row((stand_in,))]
+
+
+def _stacked(blocks: Sequence[_Row], sheet: Sheet, sizes: Sizes, *, feed: bool) -> tuple[list[_Row] | None, int]:
+    """Rows one under another, downwards from 0; a row that does not fit any more begins a new sheet, with `feed`."""
+    placed: list[_Row] = []
+    sheets, top, last = 1, 0.0, None
+    for row in blocks:
+        y = top - row.box[3]
+        if last is not None:
+            by_box = last.box[1] - _BETWEEN * sizes.note - row.box[3]
+            by_core = last.core[1] - _least_apart(last, row, sizes) - row.core[3]
+            y = min(by_box, by_core)
+        if y + row.box[1] < top - sheet.height:
+            if not feed or row.box[3] - row.box[1] > sheet.height:
+                return None, sheets
+            top -= sheet.height + _FEED * sizes.note
+            sheets += 1
+            y = top - row.box[3]
+        moved = tuple(replace(panel, at=(panel.at[0], panel.at[1] + y)) for panel in row.panels)
+        last = _Row(moved)
+        placed.append(last)
+    return placed, sheets
+
+
+def _least_apart(above: _Row, below: _Row, sizes: Sizes) -> float:
+    pairs = [
+        (one, other)
+        for one in above.panels
+        for other in below.panels
+        if one.kind not in _TEXT and other.kind not in _TEXT
+    ]
+    return max((apart(one, other, sizes) for one, other in pairs), default=0.0)

@@ -1,0 +1,246 @@
+"""Dimensions in their places: in rows outside the figure, smallest nearest, no measure twice."""
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass, field
+from typing import Literal
+
+import numpy as np
+
+from export.picture.looks import LOOKS
+from export.picture.sizes import Sizes
+from export.picture.values import Box, Floats, Path, Placed, Text, around, box_of
+from export.picture.wording import Wording
+from geom.result import Dimension, Frame
+
+_LOOK = LOOKS["dimension"]
+_SAME = 1e-6  # m: measures nearer than this are one
+_SIDES = {
+    "horizontal": {"left": "below", "right": "below"},
+    "vertical": {"below": "left", "above": "left"},
+    "level": {"below": "inside", "above": "inside"},
+}
+_FAR = (
+    30.0  # of a vertical dimension from its side, in heights of the text: there its lines would cross the whole figure
+)
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Measure:
+    """A dimension in the plane of its view: points (2,) m, its side settled, its words."""
+
+    kind: str
+    p: Floats
+    q: Floats
+    value: float
+    says: str
+    side: str
+    rank: int
+    text: str
+
+    def in_rows(self, per: float, core: Box, sizes: Sizes) -> bool:
+        """Whether it stands in rows outside the figure, not at what it measures."""
+        if self.kind == "vertical" and self.side in ("left", "right"):
+            nearest = min(self.p[0], self.q[0]) if self.side == "left" else max(self.p[0], self.q[0])
+            edge = core[0] if self.side == "left" else core[2]
+            return abs(nearest / per - edge) <= _FAR * sizes.note
+        return self.side != "inside" and self.kind not in ("aligned", "radius")
+
+    def points(self, per: float) -> tuple[Floats, Floats]:
+        """Both points on the print."""
+        return self.p / per, self.q / per
+
+
+def measures(dimensions: Iterable[Dimension], frame: Frame, wording: Wording) -> list[Measure]:
+    """Return the dimensions of a view in its plane; one that measures what another does is left out."""
+    found: dict[tuple[object, ...], Measure] = {}
+    for dimension in dimensions:
+        if not np.isfinite(dimension.value):
+            continue
+        measure = _measure(dimension, frame, wording)
+        found.setdefault(_key(measure), measure)
+    return list(found.values())
+
+
+def _measure(dimension: Dimension, frame: Frame, wording: Wording) -> Measure:
+    p, q = frame.flat(np.stack([dimension.p, dimension.q]))
+    if dimension.kind == "level":
+        # measured from the level 0, under (or over) the point itself
+        p = np.array([q[0], -float(frame.origin @ frame.up)])
+    text = wording.length(dimension.value)
+    if dimension.kind == "radius":
+        text = f"R {text}"
+    side = _SIDES.get(dimension.kind, {}).get(dimension.side, dimension.side)
+    return Measure(
+        dimension.kind, p, q, dimension.value, dimension.says, side, dimension.rank,
+        f"{text} {dimension.says}" if dimension.says else text,
+    )  # fmt: skip
+
+
+def _key(measure: Measure) -> tuple[object, ...]:
+    axis = {"horizontal": 0, "vertical": 1, "level": 1}.get(measure.kind)
+    ends = [measure.p, measure.q] if axis is None else [measure.p[axis : axis + 1], measure.q[axis : axis + 1]]
+    low, high = sorted(tuple(np.round(end / _SAME).astype(np.int64)) for end in ends)
+    # an inside dimension stands at its own place; outside, all of a side are projected to it
+    place = tuple(np.round(measure.p / _SAME).astype(np.int64)) if measure.side == "inside" else ()
+    return (measure.kind, low, high, measure.says, place)
+
+
+@dataclass
+class Rows:
+    """Dimensions placed outside a figure, and the box they and the figure take."""
+
+    placed: list[Placed] = field(default_factory=list)
+    box: Box = (0.0, 0.0, 0.0, 0.0)
+
+
+@dataclass(slots=True)
+class _Entry:
+    measure: Measure
+    low: float  # ends along the row, print units
+    high: float
+    from_low: float  # where the points are across the row
+    from_high: float
+    row: int = 0
+    shift: float = 0.0  # of the text's middle from the middle of the dimension line
+    outside: bool = False
+
+
+def outside(found: Sequence[Measure], per: float, core: Box, sizes: Sizes) -> Rows:
+    """Place all dimensions that stand outside the figure: rows below and above, left and right, then levels."""
+    rows = Rows(box=core)
+    found = [measure for measure in found if measure.in_rows(per, core, sizes)]
+    for side in ("below", "above", "left", "right"):
+        kind = "horizontal" if side in ("below", "above") else "vertical"
+        entries = [_entry(measure, per) for measure in found if measure.side == side and measure.kind == kind]
+        if entries:
+            _into_rows(entries, sizes)
+            _shift_texts(entries, sizes)
+            rows.placed += [_row_dimension(entry, side, core, per, sizes) for entry in entries]
+            rows.box = around(rows.box, *(one.box for one in rows.placed))
+    for side in ("left", "right"):
+        levels = [measure for measure in found if measure.kind == "level" and measure.side == side]
+        rows.placed += _levels(levels, side, per, rows.box, sizes)
+        rows.box = around(rows.box, *(one.box for one in rows.placed))
+    return rows
+
+
+def _entry(measure: Measure, per: float) -> _Entry:
+    axis = 0 if measure.kind == "horizontal" else 1
+    low, high = sorted(measure.points(per), key=lambda point: float(point[axis]))
+    return _Entry(measure, float(low[axis]), float(high[axis]), float(low[1 - axis]), float(high[1 - axis]))
+
+
+def _room(entry: _Entry, sizes: Sizes) -> tuple[float, float]:
+    """What an entry takes of its row: its own length, or with a text too wide for it, that beyond its upper end."""
+    wide = Text(_LOOK, entry.measure.text, (0, 0), sizes.note).width
+    entry.outside = wide + 2 * sizes.gap > entry.high - entry.low
+    return entry.low, entry.high + (wide + 3 * sizes.gap if entry.outside else 0.0)
+
+
+def _into_rows(entries: list[_Entry], sizes: Sizes) -> None:
+    """Settle the rows: by rank, then smallest nearest; one that would overlap another goes a row further out."""
+    entries.sort(key=lambda entry: (entry.measure.rank, round(entry.high - entry.low, 6), entry.low))
+    taken: list[tuple[float, float, int]] = []
+    touch = 0.1 * sizes.gap  # dimensions of one chain meet at their ends
+    for entry in entries:
+        low, high = _room(entry, sizes)
+        over = [row for other_low, other_high, row in taken if low < other_high - touch and high > other_low + touch]
+        entry.row = max(over, default=-1) + 1
+        taken.append((low, high, entry.row))
+
+
+def _shift_texts(entries: Sequence[_Entry], sizes: Sizes) -> None:
+    """Move texts along their line off the extension lines of rows further out."""
+    for entry in entries:
+        if entry.outside:
+            continue
+        wide = Text(_LOOK, entry.measure.text, (0, 0), sizes.note).width
+        lines = np.array([end for other in entries if other.row > entry.row for end in (other.low, other.high)])
+        middle = (entry.low + entry.high) / 2
+        room = (entry.high - entry.low - wide) / 2 - sizes.gap
+        for shift in sorted(np.linspace(-room, room, 41), key=abs):
+            if not len(lines) or (np.abs(lines - middle - shift) > wide / 2 + 0.5 * sizes.gap).all():
+                entry.shift = float(shift)
+                break
+
+
+def _row_dimension(entry: _Entry, side: str, core: Box, per: float, sizes: Sizes) -> Placed:
+    """Draw a dimension in its row: extension lines, dimension line, oblique strokes, text over it."""
+    out = sizes.first_row + entry.row * sizes.row
+    level = {"below": core[1] - out, "above": core[3] + out, "left": core[0] - out, "right": core[2] + out}[side]
+    upright = side in ("left", "right")
+    away = 1.0 if side in ("above", "right") else -1.0
+
+    def point(along: float, across: float) -> tuple[float, float]:
+        return (across, along) if upright else (along, across)
+
+    wide = Text(_LOOK, entry.measure.text, (0, 0), sizes.note).width
+    middle = entry.high + 2 * sizes.gap + wide / 2 if entry.outside else (entry.low + entry.high) / 2 + entry.shift
+    end = middle + wide / 2 if entry.outside else entry.high
+    paths = [
+        *_extension(point(entry.low, entry.from_low), point(entry.low, level), away, upright, sizes),
+        *_extension(point(entry.high, entry.from_high), point(entry.high, level), away, upright, sizes),
+        Path(_LOOK, np.array([point(entry.low, level), point(end, level)])),
+        oblique(np.array(point(entry.low, level)), sizes, np.pi / 2 if upright else 0.0),
+        oblique(np.array(point(entry.high, level)), sizes, np.pi / 2 if upright else 0.0),
+    ]
+    foot = level - sizes.gap * 0.6 if upright else level + sizes.gap * 0.6
+    angle = np.pi / 2 if upright else 0.0
+    text = Text(_LOOK, entry.measure.text, point(middle, foot), sizes.note, "centre", angle)
+    return placed(entry.measure, text, angle, point((entry.low + entry.high) / 2, level), paths)
+
+
+def _extension(
+    start: tuple[float, float], end: tuple[float, float], away: float, upright: bool, sizes: Sizes
+) -> list[Path]:
+    """Return the extension line from beside a point of the figure to just past the dimension line."""
+    step = np.array([away, 0.0]) if upright else np.array([0.0, away])
+    first, last = np.array(start) + sizes.gap * step, np.array(end) + sizes.overshoot * step
+    return [Path(_LOOK, np.stack([first, last]))] if (last - first) @ step > 0 else []
+
+
+def oblique(at: Floats, sizes: Sizes, angle: float) -> Path:
+    """Return the oblique stroke across a dimension line that runs at `angle` (rad)."""
+    half = sizes.arrow / 2 * np.array([np.cos(angle + np.pi / 4), np.sin(angle + np.pi / 4)])
+    return Path(_LOOK, at + np.stack([-half, half]))
+
+
+def placed(measure: Measure, text: Text, angle: float, line_at: tuple[float, float], paths: Sequence[Path]) -> Placed:
+    """Return a dimension in its place."""
+    kinds: dict[str, Literal["ordinate", "radius"]] = {"level": "ordinate", "radius": "radius"}
+    kind = kinds.get(measure.kind, "linear")
+    return Placed(kind, measure.p, measure.q, measure.value, text, measure.says, angle, line_at, tuple(paths))
+
+
+def _levels(levels: Sequence[Measure], side: str, per: float, box: Box, sizes: Sizes) -> list[Placed]:
+    """Level marks in one column, in order of height, no two texts nearer than their leading."""
+    if not levels:
+        return []
+    way = 1.0 if side == "right" else -1.0
+    column = (box[2] if side == "right" else box[0]) + way * 2.5 * sizes.gap
+    ordered = sorted(levels, key=lambda level: level.value)
+    heights = _spread([float(level.q[1]) / per for level in ordered], 2.2 * sizes.note)
+    return [_level(level, height, column, way, per, sizes) for level, height in zip(ordered, heights, strict=True)]
+
+
+def _spread(heights: Sequence[float], apart: float) -> list[float]:
+    """Heights in rising order moved up as little as it takes to stand apart."""
+    moved: list[float] = []
+    for height in heights:
+        moved.append(max(height, moved[-1] + apart) if moved else height)
+    return moved
+
+
+def _level(measure: Measure, height: float, column: float, way: float, per: float, sizes: Sizes) -> Placed:
+    _, q = measure.points(per)
+    knee, end = column + way * 2 * sizes.gap, column + way * 4 * sizes.gap
+    wide = Text(_LOOK, measure.text, (0, 0), sizes.note).width
+    line = np.array([[q[0] + way * sizes.gap, q[1]], [column, q[1]], [knee, height], [end + way * wide, height]])
+    if height == q[1]:
+        line = line[[0, 3]]
+    tick, half = (knee + end) / 2, 0.6 * sizes.gap
+    flag = np.array([[tick - half, height + 1.6 * half], [tick, height], [tick + half, height + 1.6 * half]])
+    text = Text(
+        _LOOK, measure.text, (end + (0.3 * sizes.gap if way > 0 else -wide), height + 0.6 * sizes.gap), sizes.note
+    )
+    return placed(measure, text, 0.0, (end, height), [Path(_LOOK, line), Path(_LOOK, flag, closed=True)])

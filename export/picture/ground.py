@@ -1,0 +1,97 @@
+"""What is taken on a panel: a grid of small cells, so that a mark finds a free place in constant time."""
+
+from dataclasses import dataclass, field
+
+import numpy as np
+from numpy.typing import NDArray
+
+from export.picture.values import Box, Floats
+
+HEAVY = 1  # lines of the thing itself
+LIGHT = 2  # dimension and extension lines, chords, leaders
+TEXT = 4
+ANY = HEAVY | LIGHT | TEXT
+
+
+@dataclass(eq=False)
+class Ground:
+    """Cells of one panel and what lies on them, as bits.
+
+    A line is entered by points half a cell apart, so what it may clip unseen is a corner of less than half a cell; texts
+    are asked for with a margin of more than that round them.
+    """
+
+    box: Box  # print units
+    cell: float  # print units
+    cells: NDArray[np.uint8] = field(init=False)
+
+    def __post_init__(self) -> None:
+        left, bottom, right, top = self.box
+        columns = int(np.ceil((right - left) / self.cell)) + 1
+        rows = int(np.ceil((top - bottom) / self.cell)) + 1
+        self.cells = np.zeros((rows, columns), dtype=np.uint8)
+
+    def lines(self, points: Floats, bits: int, *, closed: bool = False) -> None:
+        """Enter a line through points (n, 2)."""
+        if closed:
+            points = np.concatenate([points, points[:1]])
+        steps = np.diff(points, axis=0)
+        lengths = np.hypot(steps[:, 0], steps[:, 1])
+        counts = np.maximum(1, np.ceil(lengths / (self.cell / 2)).astype(np.int64))
+        which = np.repeat(np.arange(len(steps)), counts)
+        number = np.arange(len(which)) - np.repeat(np.cumsum(counts) - counts, counts)
+        spread = points[which] + steps[which] * (number / counts[which])[:, None]
+        self.points(np.concatenate([spread, points[-1:]]), bits)
+
+    def area(self, corners: Floats, bits: int) -> None:
+        """Enter all cells a box with corners (4, 2) lies on."""
+        self.points(self._spread(corners), bits)
+
+    def free(self, corners: Floats, bits: int = ANY, margin: float = 0.0) -> bool:
+        """Return whether a box with corners (4, 2) in turn, and a margin round it, is inside and touches none of `bits`."""
+        if margin:
+            corners = grown(corners, margin)
+        low, high = corners.min(axis=0), corners.max(axis=0)
+        left, bottom, right, top = self.box
+        if low[0] < left or low[1] < bottom or high[0] > right or high[1] > top:
+            return False
+        if corners[0, 1] == corners[1, 1]:  # upright: a slice of the grid
+            c0, r0 = ((low - (left, bottom)) / self.cell).astype(np.int64)
+            c1, r1 = ((high - (left, bottom)) / self.cell).astype(np.int64)
+            return not (self.cells[r0 : r1 + 1, c0 : c1 + 1] & bits).any()
+        return not self.meets(self._spread(corners), bits)
+
+    def meets(self, points: Floats, bits: int) -> bool:
+        """Return whether any of points (n, 2) lies on a cell with any of `bits`."""
+        rows, columns, inside = self._indices(points)
+        return bool((self.cells[rows[inside], columns[inside]] & bits).any())
+
+    def crosses(self, start: Floats, end: Floats, bits: int) -> bool:
+        """Return whether the straight line between two points meets any of `bits`."""
+        count = max(2, int(np.hypot(*(end - start)) / (self.cell / 2)) + 1)
+        return self.meets(start + (end - start) * np.linspace(0.0, 1.0, count)[:, None], bits)
+
+    def _spread(self, corners: Floats) -> Floats:
+        along, up = corners[1] - corners[0], corners[3] - corners[0]
+        counts = [max(2, int(np.ceil(np.hypot(*side) / (self.cell / 2))) + 1) for side in (along, up)]
+        u, v = np.meshgrid(np.linspace(0, 1, counts[0]), np.linspace(0, 1, counts[1]))
+        return corners[0] + u.ravel()[:, None] * along + v.ravel()[:, None] * up
+
+    def points(self, points: Floats, bits: int) -> None:
+        """Enter points (n, 2)."""
+        rows, columns, inside = self._indices(points)
+        self.cells[rows[inside], columns[inside]] |= np.uint8(bits)
+
+    def _indices(self, points: Floats) -> tuple[NDArray[np.int64], NDArray[np.int64], NDArray[np.bool_]]:
+        place = np.floor((points - self.box[:2]) / self.cell)
+        rows, columns = place[:, 1].astype(np.int64), place[:, 0].astype(np.int64)
+        inside = (rows >= 0) & (columns >= 0) & (rows < self.cells.shape[0]) & (columns < self.cells.shape[1])
+        return rows, columns, inside
+
+
+def grown(corners: Floats, margin: float) -> Floats:
+    """Return the corners (4, 2), in turn, of a box larger by a margin on each side."""
+    along, up = corners[1] - corners[0], corners[3] - corners[0]
+    along = along / max(float(np.hypot(*along)), 1e-30) * margin
+    up = up / max(float(np.hypot(*up)), 1e-30) * margin
+    return corners + np.array([-along - up, along - up, along + up, -along + up])

@@ -1,0 +1,122 @@
+"""From a result to the picture on its sheet: the largest print scale at which everything fits."""
+
+from collections.abc import Iterator, Sequence
+from dataclasses import dataclass
+
+from export.picture import notes as noting
+from export.picture import plan as planning
+from export.picture.arrange import Arranged, Foot, arrange
+from export.picture.panels import Print, Subject, elevation, printed, subject
+from export.picture.plan import Site
+from export.picture.scale import Scale, Sheet, scales, sheet
+from export.picture.sizes import PAPER
+from export.picture.values import Panel, Picture
+from export.picture.views import Drawing
+from export.picture.wording import Wording
+from geom.result import Result
+
+_SMALLEST = 25.0  # printed mm: once all geometry is smaller, a smaller scale makes no more room for its text
+_TITLE_ROOM = 12.0  # at least this much stands under each view, mm: mark and two lines
+_NOTES_WIDTH = 120.0  # of the notes' column, mm
+
+
+@dataclass(frozen=True)
+class Contents:
+    """What is drawn, at whatever scale."""
+
+    subjects: tuple[Subject, ...]
+    site: Site | None
+    words: noting.Words
+    wording: Wording
+
+    @property
+    def largest(self) -> float:
+        """Longest side of any view, m."""
+        boxes = [one.seen.box for one in self.subjects]
+        return max((max(box[2] - box[0], box[3] - box[1]) for box in boxes), default=0.0)
+
+
+def contents(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> Contents:
+    """Return all views of a result, its plan and its notes."""
+    wording = Wording(result.setting.drawing_unit)
+    words = noting.words(result, extra=extra)
+    subjects = tuple(
+        subject(piece, view, drawing, wording, words.numbers.get(piece.mark, ()))
+        for piece in result.pieces
+        for view in piece.views
+    )
+    site = planning.site(result, drawing) if planning.wanted(result) else None
+    return Contents(subjects, site, words, wording)
+
+
+def picture(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> Picture:
+    """Return the picture of a result on the sheet its design names.
+
+    The scale is the largest at which everything fits one sheet. Where no scale brings that about, as the text of many pieces
+    takes more than a sheet whatever the scale, it is the largest at which each view fits one, on as many as it takes.
+    """
+    found = contents(result, drawing, extra=extra)
+    on = sheet(result.setting.drawing.sheet)
+    for scale in _candidates(found):
+        arranged = _fitted(found, scale, on)
+        if arranged is not None:
+            return _picture(arranged, scale, on)
+    for scale in scales(found.wording.unit):
+        arranged = _fitted(found, scale, on, feed=True)
+        if arranged is not None:
+            return _picture(arranged, scale, on)
+    raise AssertionError("the smallest scale brings any view onto a sheet")
+
+
+def _candidates(found: Contents) -> Iterator[Scale]:
+    """Scales from the largest on, down to where geometry takes no room any more."""
+    for scale in scales(found.wording.unit):
+        if found.largest * 1000 / scale.ratio < _SMALLEST:
+            return
+        yield scale
+
+
+def _fitted(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged | None:
+    """Everything in place at a scale, if it fits: first by bare geometry, then without marks, then with them."""
+    print_ = Print(scale.ratio / 1000, PAPER, found.wording)
+    heading = noting.heading(found.words, PAPER, width=on.width)
+    notes = noting.notes(found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH)
+    if arrange(_bare(found, print_), Foot(heading, None, notes), on, PAPER, feed=feed) is None:
+        return None
+    views, plan = _panels(found, print_, marks=False)
+    if arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed) is None:
+        return None
+    views, plan = _panels(found, print_, marks=True)
+    arranged = arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed)
+    if arranged is None:
+        return None
+    dropped = sum(panel.dropped for panel in arranged.panels)
+    if not dropped and arranged.sheets == 1:
+        return arranged
+    said = noting.notes(
+        found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH, dropped=dropped, sheets=arranged.sheets
+    )
+    return arrange(views, Foot(heading, plan, said), on, PAPER, feed=feed)
+
+
+def _bare(found: Contents, print_: Print) -> list[Panel]:
+    """Views with no more than their geometry and the least of a title: what must fit in any case."""
+    panels = []
+    for one in found.subjects:
+        core = printed(one.seen.box, print_.per)
+        panels.append(
+            Panel("", "elevation", print_.per, (), core=core, box=(core[0], core[1] - _TITLE_ROOM, *core[2:]))
+        )
+    return panels
+
+
+def _panels(found: Contents, print_: Print, *, marks: bool) -> tuple[list[Panel], Panel | None]:
+    views = [elevation(one, print_, marks=marks) for one in found.subjects]
+    plan = None if found.site is None else planning.plan(found.site, print_, marks=marks)
+    return views, plan
+
+
+def _picture(arranged: Arranged, scale: Scale, on: Sheet) -> Picture:
+    return Picture(
+        arranged.panels, arranged.notes, scale.says, scale.ratio, arranged.box, arranged.sheets, (on.width, on.height)
+    )

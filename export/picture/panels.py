@@ -1,0 +1,253 @@
+"""A view of one piece as it is printed at one scale: its geometry, symbols, dimensions, marks and title."""
+
+from collections.abc import Iterable, Sequence
+from dataclasses import dataclass, field, replace
+
+import numpy as np
+
+from export.picture import labels, symbols
+from export.picture.dimensions import Measure, measures, outside
+from export.picture.ground import HEAVY, LIGHT, TEXT, Ground
+from export.picture.inside import inside
+from export.picture.labels import Wanted
+from export.picture.looks import LOOKS
+from export.picture.sizes import Sizes
+from export.picture.titles import title
+from export.picture.values import (
+    Box,
+    Circle,
+    Floats,
+    Group,
+    Links,
+    Panel,
+    Path,
+    Placed,
+    Stroke,
+    Text,
+    around,
+    box_of,
+    shifted,
+)
+from export.picture.views import Drawing, Seen, is_plan, lines_of, seen
+from export.picture.wording import Wording
+from geom.result import Label, Piece, View
+
+_CELL = 0.2  # of the grid, in heights of the notes' text: half a millimetre on paper
+_MARGIN = 14.0  # round a view where marks may still stand, in the same
+_FEW = 40  # marks of a view that are placed before the dimensions inside it
+_MOST_CELLS = 4e6  # of one grid: a sheet of A0 at half a millimetre
+
+
+@dataclass(frozen=True)
+class Print:
+    """How a panel is printed: metres of geometry in a unit of print, sizes of what is not geometry, words of figures."""
+
+    per: float
+    sizes: Sizes
+    wording: Wording
+
+
+@dataclass(frozen=True)
+class Subject:
+    """One view to be printed: what does not change with the scale. `cautions` are the numbers of its cautions."""
+
+    piece: Piece
+    view: View
+    seen: Seen
+    labels: tuple[Label, ...]
+    measures: tuple[Measure, ...]
+    cautions: tuple[int, ...] = ()
+
+
+@dataclass
+class Drawn:
+    """What is drawn beside the geometry, as it grows."""
+
+    paths: list[Path] = field(default_factory=list)
+    circles: list[Circle] = field(default_factory=list)
+    texts: list[Text] = field(default_factory=list)
+    dimensions: list[Placed] = field(default_factory=list)
+    dropped: int = 0
+
+    @property
+    def box(self) -> Box:
+        """Box round all of it."""
+        placed = self.dimensions
+        return around(
+            *(box_of(path.points) for path in self.paths),
+            *(circle.box for circle in self.circles),
+            *(text.box for text in self.texts),
+            *(one.box for one in placed),
+        )
+
+
+def subject(piece: Piece, view: View, drawing: Drawing, wording: Wording, cautions: Sequence[int] = ()) -> Subject:
+    """Return a view of a piece ready to be printed at any scale."""
+    shown = seen(piece, view, drawing)
+    found = labels_of(piece) if view.labels is None else view.labels
+    return Subject(piece, view, shown, found, tuple(measures(view.dimensions, view.frame, wording)), tuple(cautions))
+
+
+def labels_of(piece: Piece) -> tuple[Label, ...]:
+    """Return a piece's own labels, or those of its parts, each text at a place once."""
+    if piece.labels:
+        return piece.labels
+    found = {(label.text, label.at.tobytes()): label for part in piece.parts for label in labels_of(part)}
+    return tuple(found.values())
+
+
+def elevation(subject: Subject, print_: Print, *, marks: bool = True) -> Panel:
+    """Return a view as it is printed, its title under it; without marks to see what room it takes."""
+    per, sizes = print_.per, print_.sizes
+    drawn = Drawn()
+    geometry = printed(subject.seen.box, per)
+    wanted = _symbols(subject, geometry, print_, drawn)
+    core = around(geometry, drawn.box)
+    held = _with_levels(subject.measures, core, per, sizes)
+    rows = outside(subject.measures, per, held, sizes)
+    drawn.dimensions += rows.placed
+    if marks:
+        beside = [measure for measure in subject.measures if not measure.in_rows(per, held, sizes)]
+        _mark(subject, wanted, beside, ground_of(rows.box, sizes), print_, drawn)
+    group = Group(
+        subject.piece.mark, subject.seen.strokes, subject.seen.links, tuple(drawn.paths), tuple(drawn.circles),
+        tuple(drawn.texts),
+    )  # fmt: skip
+    kind = "plan" if is_plan(subject.view.frame) else "elevation"
+    name = subject.piece.mark if subject.view is subject.piece.views[0] else f"{subject.piece.mark} {subject.view.name}"
+    panel = Panel(
+        name, kind, per, (group,), tuple(drawn.dimensions), (), core, around(core, drawn.box), dropped=drawn.dropped
+    )
+    return _titled(panel, subject, print_)
+
+
+def _symbols(subject: Subject, geometry: Box, print_: Print, drawn: Drawn) -> list[Wanted]:
+    """Draw the symbols of a view's labels and of its ground, and return the marks to be placed beside them."""
+    frame, sizes, per = subject.view.frame, print_.sizes, print_.per
+    flat_labels = frame.flat(np.array([label.at for label in subject.labels]).reshape(-1, 3)) / per
+    middle = (geometry[1] + geometry[3]) / 2
+    wanted = []
+    for label, at in zip(subject.labels, flat_labels, strict=True):
+        along = None if label.along is None else frame.flat(label.along[None] + frame.origin)[0]
+        above = bool(at[1] >= middle - 1e-9)
+        wanted.append(_symbol(label, at, along, above=above, plan=is_plan(frame), print_=print_, drawn=drawn))
+    lines = lines_of(subject.piece) if subject.view.lines is None else subject.view.lines
+    for line in lines:
+        if line.role in ("floor", "ground") and not is_plan(frame):
+            points = frame.flat(line.curve.points(per))
+            drawn.paths += symbols.ground_hatching(points / per, sizes)
+    return wanted
+
+
+def _symbol(  # noqa: PLR0913 - what a symbol depends on
+    label: Label, at: Floats, along: Floats | None, *, above: bool, plan: bool, print_: Print, drawn: Drawn
+) -> Wanted:
+    sizes = print_.sizes
+    clear = 0.3 * sizes.gap
+    match label.role:
+        case "support" if not plan:
+            drawn.paths += symbols.support(at, sizes, above=above)
+            away = 1.0 if above else -1.0
+            at = at + (0.0, away * 0.7 * sizes.symbol)
+            return Wanted(label.text, at, label.role, 0.75 * sizes.symbol, first=(0, int(away)))
+        case "support" | "held point":
+            drawn.paths += symbols.held_point(at, sizes)
+            clear = 0.45 * sizes.symbol
+        case "load" if plan:
+            drawn.circles.append(symbols.dot(at, sizes, "load"))
+        case "load" if label.reach > 0:
+            tip = at - (0.0, label.reach / print_.per)
+            drawn.paths += [Path(LOOKS["load"], np.stack([at, tip])), *symbols.bob(tip, sizes)]
+            at, clear = tip + (0.0, 0.5 * sizes.arrow), 0.5 * sizes.arrow
+        case "load":
+            drawn.paths += symbols.load_arrow(at, sizes, above=False)
+            at, clear = at - (0.0, 1.6 * sizes.arrow), 0.5 * sizes.arrow
+        case "node":
+            drawn.circles.append(symbols.dot(at, sizes, "node"))
+    return Wanted(label.text, at, label.role, clear, along)
+
+
+def _with_levels(found: Sequence[Measure], core: Box, per: float, sizes: Sizes) -> Box:
+    """The box that rows stand off: a level said under the lowest line needs a line of text of it."""
+    lowest = [float(measure.q[1]) / per for measure in found if measure.kind == "level" and measure.side == "inside"]
+    foot = min(lowest, default=core[1]) - 2.0 * sizes.note
+    return (core[0], min(core[1], foot), core[2], core[3])
+
+
+def _mark(  # noqa: PLR0913 - what marks depend on
+    subject: Subject, wanted: Sequence[Wanted], beside: Sequence[Measure], ground: Ground, print_: Print, drawn: Drawn
+) -> None:
+    """Place the marks, then the dimensions inside the figure, which find a place further off; of many marks only supports."""
+    enter(ground, subject.seen, drawn, print_.per)
+    few = len(wanted) <= _FEW
+    first = labels.place([mark for mark in wanted if few or mark.role == "support"], ground, print_.sizes)
+    within = inside(beside, print_.per, ground, print_.sizes)
+    rest = labels.place([mark for mark in wanted if not (few or mark.role == "support")], ground, print_.sizes)
+    drawn.dimensions += within.placed
+    for placed in (first, rest):
+        drawn.texts += placed.texts
+        drawn.paths += placed.paths
+        drawn.circles += placed.circles
+    drawn.dropped = within.dropped + first.dropped + rest.dropped
+
+
+def _titled(panel: Panel, subject: Subject, print_: Print) -> Panel:
+    sizes = print_.sizes
+    lines = title(
+        subject.piece, subject.view, print_.wording, sizes,
+        room=panel.core[2] - panel.core[0], cautions=subject.cautions,
+    )  # fmt: skip
+    return with_title(panel, lines, sizes)
+
+
+def with_title(panel: Panel, lines: Sequence[Text], sizes: Sizes) -> Panel:
+    """Return a panel with lines of title under all it shows, flush with the left of its geometry."""
+    top = panel.box[1] - 1.5 * sizes.note
+    titles = tuple(replace(line, at=(line.at[0] + panel.core[0], line.at[1] + top)) for line in lines)
+    return replace(panel, titles=titles, box=around(panel.box, *(line.box for line in titles)))
+
+
+def lowered(panel: Panel, by: float) -> Panel:
+    """Return a panel with its title moved down, so that the titles of a row stand in one line."""
+    titles = tuple(replace(line, at=(line.at[0], line.at[1] - by)) for line in panel.titles)
+    return replace(panel, titles=titles, box=around(panel.box, *(line.box for line in titles)))
+
+
+def printed(box: Box, per: float) -> Box:
+    """Return a box of geometry (m) on the print; a point where there is no geometry."""
+    if not np.isfinite(box[0]):
+        return (0.0, 0.0, 0.0, 0.0)
+    return (box[0] / per, box[1] / per, box[2] / per, box[3] / per)
+
+
+def ground_of(box: Box, sizes: Sizes) -> Ground:
+    """Return an empty ground over a box and the margin where marks may stand."""
+    margin = _MARGIN * sizes.note
+    box = (box[0] - margin, box[1] - margin, box[2] + margin, box[3] + margin)
+    cell = max(_CELL * sizes.note, float(np.sqrt((box[2] - box[0]) * (box[3] - box[1]) / _MOST_CELLS)))
+    return Ground(box, cell)
+
+
+def enter(ground: Ground, shown: Seen, drawn: Drawn, per: float) -> None:
+    """Enter what is drawn already into the ground."""
+    for stroke in shown.strokes:
+        ground.lines(stroke.points / per, HEAVY if stroke.look.heavy else LIGHT, closed=stroke.closed)
+    for row in shown.links:
+        ground.points(row.spread(ground.cell * per) / per, HEAVY)
+    _enter_paths(ground, drawn.paths)
+    for circle in drawn.circles:
+        ground.area(corners_of(circle.box), HEAVY)
+    for one in drawn.dimensions:
+        _enter_paths(ground, one.paths)
+        ground.area(one.text.corners, TEXT)
+
+
+def _enter_paths(ground: Ground, paths: Iterable[Path]) -> None:
+    for path in paths:
+        ground.lines(path.points, HEAVY if path.look.heavy else LIGHT, closed=path.closed)
+
+
+def corners_of(box: Box) -> Floats:
+    """Return the corners (4, 2) of an upright box."""
+    left, bottom, right, top = box
+    return np.array([[left, bottom], [right, bottom], [right, top], [left, top]])

@@ -1,0 +1,104 @@
+"""The plan under the elevations: all pieces in place from above, y up, held points as crosses, marks beside."""
+
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass
+
+import numpy as np
+
+from export.picture import labels, symbols
+from export.picture.labels import Wanted
+from export.picture.looks import LOOKS
+from export.picture.panels import Drawn, Print, enter, ground_of, printed, with_title
+from export.picture.sizes import Sizes
+from export.picture.values import Floats, Group, Panel, Text, around
+from export.picture.views import Drawing, Seen, is_plan, seen_on_plan
+from geom.result import PLAN, Piece, Result
+
+_SAME = 1e-6  # m: supports nearer than this on plan are one cross
+
+
+@dataclass(frozen=True)
+class Site:
+    """The plan to be printed: what each piece shows from above, and where it is held."""
+
+    pieces: tuple[Piece, ...]
+    seen: tuple[Seen, ...]
+    held: tuple[Mapping[str, Floats], ...]  # of each piece: the support's mark -> (2,) m, each cross of the plan once
+
+
+def site(result: Result, drawing: Drawing) -> Site:
+    """Return the plan of all pieces ready to be printed at any scale."""
+    shown = tuple(seen_on_plan(piece, PLAN, drawing) for piece in result.pieces)
+    return Site(result.pieces, shown, tuple(_held(result.pieces)))
+
+
+def wanted(result: Result) -> bool:
+    """Return whether a plan tells more than the views do: not where the only piece is drawn in plan already."""
+    return not (len(result.pieces) == 1 and is_plan(result.pieces[0].frame))
+
+
+def plan(site: Site, print_: Print, *, marks: bool = True) -> Panel:
+    """Return the plan as it is printed; without marks to see what room it takes."""
+    per, sizes = print_.per, print_.sizes
+    core = printed(around(*(one.box for one in site.seen)), per)
+    ground = ground_of(core, sizes)
+    drawn = [Drawn() for _ in site.pieces]
+    for mine, shown, held in zip(drawn, site.seen, site.held, strict=True):
+        for at in held.values():
+            mine.paths += symbols.held_point(at / per, sizes)
+        enter(ground, shown, mine, per)
+    core = around(core, *(mine.box for mine in drawn))
+    loose = Drawn()
+    if marks:
+        placed = labels.place([*_names(site, per), *_supports(site, print_)], ground, sizes)
+        loose = Drawn(placed.paths, placed.circles, placed.texts, dropped=placed.dropped)
+    groups = [
+        Group(piece.mark, shown.strokes, shown.links, tuple(mine.paths))
+        for piece, shown, mine in zip(site.pieces, site.seen, drawn, strict=True)
+    ]
+    groups.append(Group("", paths=tuple(loose.paths), circles=tuple(loose.circles), texts=tuple(loose.texts)))
+    panel = Panel("plan", "plan", per, tuple(groups), core=core, box=around(core, loose.box), dropped=loose.dropped)
+    return with_title(panel, _title(sizes), sizes)
+
+
+def _held(pieces: Iterable[Piece]) -> Iterable[dict[str, Floats]]:
+    """Of each piece the supports it is the first to hang on, by their marks."""
+    crossed: set[bytes] = set()
+    for piece in pieces:
+        mine = {}
+        for pull in piece.pulls:
+            place = np.round(pull.at[:2] / _SAME).astype(np.int64).tobytes()
+            if place not in crossed:
+                crossed.add(place)
+                mine[pull.support] = pull.at[:2]
+        yield mine
+
+
+def _names(site: Site, per: float) -> Iterable[Wanted]:
+    """The mark of each piece, beside the middle of its longest line."""
+    for piece, shown in zip(site.pieces, site.seen, strict=True):
+        if not shown.strokes:
+            continue
+        points = max(
+            (stroke.points for stroke in shown.strokes), key=lambda points: float(np.ptp(points, axis=0).sum())
+        )
+        number = (len(points) - 1) // 2
+        step = points[number + 1] - points[number]
+        yield Wanted(piece.mark, (points[number] + step / 2) / per, "member", along=step / per)
+
+
+def _supports(site: Site, print_: Print) -> Iterable[Wanted]:
+    """Marks of the supports that have a name of their own."""
+    named = {pull.support for piece in site.pieces for pull in piece.pulls if pull.named}
+    for held in site.held:
+        for mark, at in held.items():
+            if mark in named:
+                yield Wanted(mark, at / print_.per, "support", clear=0.45 * print_.sizes.symbol)
+
+
+def _title(sizes: Sizes) -> list[Text]:
+    title = Text(LOOKS["mark"], "Plan", (0.0, -sizes.title), sizes.title)
+    beside = Text(
+        LOOKS["note"], "all pieces in place, y up", (title.width + 0.6 * sizes.title, -sizes.title), sizes.note
+    )
+    return [title, beside]
