@@ -1,9 +1,10 @@
 """Tangent arcs along a curve: pairs of circular arcs (biarcs) from point to point, for what is bent or cut by arcs.
 
-Bolton, "Biarc curves", Computer-Aided Design 7 (1975), joins two points with given tangents by two arcs that meet with a
-common tangent. Of the family, the one with both tangent lengths equal is taken. Its distance from a smooth curve over a step
-of length h is |dk/ds| h^3 / 324 to leading order, k the curvature (Meek and Walton, "Approximating smooth planar curves
-by arc splines", Journal of Computational and Applied Mathematics 59 (1995)), which says where the steps must be short.
+Bolton, "Biarc curves", Computer-Aided Design 7 (1975), joins two points with given tangents by two arcs that meet with
+a common tangent. Of the family, the one with both tangent lengths equal is taken. Its distance from a smooth curve over
+a step of length h is |dk/ds| h^3 / 324 to leading order, k the curvature (Meek and Walton, "Approximating smooth planar
+curves by arc splines", Journal of Computational and Applied Mathematics 59 (1995)), which says where the steps must be
+short.
 """
 
 from collections.abc import Iterator
@@ -151,8 +152,8 @@ def _at(curve: Curve, frame: Frame, nodes: Floats) -> Arcs:
 def _off(arcs: Arcs, points: Floats, biarc: NDArray[np.int64]) -> float:
     """Greatest distance of points (n, 2) from the biarc each belongs to, m.
 
-    With u from the middle of the biarc, where both its arcs run along t with normal n, and k the curvature of one of them,
-    f = n u - k u u / 2 is 0 on its circle and the distance is 2 f / (1 + sqrt(1 - 2 k f)), also for k = 0.
+    With u from the middle of the biarc, where both its arcs run along t with normal n, and k the curvature of one of
+    them, f = n u - k u u / 2 is 0 on its circle and the distance is 2 f / (1 + sqrt(1 - 2 k f)), also for k = 0.
     """
     chords = np.diff(arcs.points, axis=0)
     bulges = arcs.bulges[:-1]

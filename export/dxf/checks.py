@@ -17,8 +17,8 @@ from geom import units
 
 if TYPE_CHECKING:
     from ezdxf.document import Drawing
-    from ezdxf.entities import DXFEntity
-    from ezdxf.layouts import BaseLayout
+    from ezdxf.entities.dxfentity import DXFEntity
+    from ezdxf.layouts.base import BaseLayout
 
 _PLACES = (
     2.0  # how many units of the last place a corner may be off: two roundings, of the point and of its block's place
@@ -27,7 +27,7 @@ _PLACES = (
 
 @dataclass(frozen=True)
 class Expected:
-    """What a file must hold: names of blocks referred to once, how many links, extents of the geometry (drawing units)."""
+    """What a file must hold: blocks referred to once, how many links, extents of the geometry (drawing units)."""
 
     fmt: Format
     layers: frozenset[str]

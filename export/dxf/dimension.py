@@ -1,7 +1,7 @@
 """Dimensions as real DIMENSION entities, drawn the way they are placed in the picture.
 
-The entity holds what is measured and in which style, so that a reader can measure again; its block holds our own lines, so
-that it looks the same everywhere until somebody edits it.
+The entity holds what is measured and in which style, so that a reader can measure again; its block holds our own
+lines, so that it looks the same everywhere until somebody edits it.
 """
 
 from __future__ import annotations

@@ -119,7 +119,7 @@ def chunks(
 
     `box` and `height` are the extents written into the header, drawing units.
     """
-    import ezdxf
+    from ezdxf._options import options
 
     space = doc.modelspace()
     space.reset_extents((box[0], box[1], height[0]), (box[2], box[3], height[1]))
@@ -130,12 +130,12 @@ def chunks(
             doc.classes.add_class(name)
         doc.classes.classes = dict(sorted(doc.classes.classes.items()))
     stream = io.StringIO()
-    before = ezdxf.options.write_fixed_meta_data_for_testing
-    ezdxf.options.write_fixed_meta_data_for_testing = True
+    before = options.write_fixed_meta_data_for_testing
+    options.write_fixed_meta_data_for_testing = True
     try:
         doc.write(stream)
     finally:
-        ezdxf.options.write_fixed_meta_data_for_testing = before
+        options.write_fixed_meta_data_for_testing = before
     text = stream.getvalue()
     for start in range(0, len(text), _CHUNK):
         yield doc.encode(text[start : start + _CHUNK])

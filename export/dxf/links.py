@@ -46,7 +46,7 @@ class LinkBlocks:
 
 
 def outlines(row: Links, *, face_on: bool) -> list[Stroke]:
-    """Return the outlines of one link about its centre, long axis along x: round the wire and the opening, or from the side."""
+    """Return the outlines of one link about its centre, long axis along x: round wire and opening, or from the side."""
     if not row.wire:
         return [_rounded(row.pitch, row.width)]
     if face_on:

@@ -14,7 +14,7 @@ from export.picture.looks import Look
 from export.picture.values import Circle, Floats, Path, Stroke, Text
 
 if TYPE_CHECKING:
-    from ezdxf.layouts import BaseLayout
+    from ezdxf.layouts.base import BaseLayout
 
 _ANCHORS = {"left": 0, "centre": 1, "right": 2}
 _BULGE_DECIMALS = 12  # an arc's sagitta is half its chord times the bulge: exact to 1e-12 of the chord
@@ -53,7 +53,7 @@ class Pen:
         at = self.paper(np.array([text.at]))[0]
         self.write(text.text, at, text.height * self.fmt.printed, text.look, anchor=text.anchor, angle=text.angle)
 
-    def write(  # noqa: PLR0913 - what a text is
+    def write(
         self, says: str, at: Sequence[float], height: float, look: Look, *, anchor: str = "left", angle: float = 0.0
     ) -> None:
         """Draw a line of text at a point and in a height of the drawing's unit."""
@@ -91,7 +91,7 @@ class Pen:
     def _line(self, points: Sequence[Pair], look: Look, *, closed: bool, bulges: Floats | None = None) -> None:
         values = self._attributes(look)
         if len(points) == 2 and bulges is None:
-            self.layout.add_line(*points, values)
+            self.layout.add_line(points[0], points[1], values)
         elif self.fmt.old:
             self._old_polyline(points, values, closed=closed, bulges=bulges)
         else:

@@ -68,7 +68,7 @@ class _Made:
     def checked(self) -> Checked:
         """Check the document that was written."""
         assert self.document is not None, "the chunks are taken first"
-        return checks.check(self.document, self.expected) | {"scale": self.picture.scale}
+        return {**checks.check(self.document, self.expected), "scale": self.picture.scale}
 
 
 def _within(within: float) -> str:
@@ -123,7 +123,7 @@ def _group(doc: Document, group: Group, name: str, links: LinkBlocks, space: Pen
 
 
 def _place(drawn: Picture, at: tuple[float, float], fmt: Format) -> tuple[float, float]:
-    """Return where a printed point is in the drawing: the plan's origin, so the site's, is at 0, else the lower left corner."""
+    """Return where a printed point is in the drawing: 0 is the plan's origin, so the site's, else the lower left."""
     plan = next((panel.at for panel in drawn.panels if panel.name == "plan"), drawn.box[:2])
     x, y = ((at[axis] - plan[axis]) * fmt.printed for axis in (0, 1))
     return round(x, fmt.decimals) + 0.0, round(y, fmt.decimals) + 0.0

@@ -50,7 +50,8 @@ class _Row:
 def arrange(views: Sequence[Panel], foot: Foot, sheet: Sheet, sizes: Sizes, *, feed: bool = False) -> Arranged | None:
     """Return views, plan and notes in place on a sheet, or None where they do not fit it.
 
-    With `feed` as many sheets are taken as it takes, one under another; then None only where one view is larger than one.
+    With `feed` as many sheets are taken as it takes, one under another; then None only where one view is larger than
+    one.
     """
     blocks = [*_rows(views, sheet.width, sizes), *_foot(foot.plan, foot.notes, sheet.width, sizes)]
     if foot.heading is not None:
@@ -108,7 +109,7 @@ def _levelled(row: Sequence[Panel], sizes: Sizes) -> _Row:
 
 def _foot(plan: Panel | None, notes: Notes, width: float, sizes: Sizes) -> list[_Row]:
     """Notes to the left, the plan to their right where it fits, else over them."""
-    left, bottom, right, top = notes.box
+    left, bottom, right, _ = notes.box
     stand_in = Panel("", "notes", 1.0, (), core=notes.box, box=notes.box, at=(-left, -bottom))
     if plan is None:
         return [_Row((stand_in,))]

@@ -8,7 +8,7 @@ import numpy as np
 
 from export.picture.looks import LOOKS
 from export.picture.sizes import Sizes
-from export.picture.values import Box, Floats, Path, Placed, Text, around, box_of
+from export.picture.values import Box, Floats, Path, Placed, Text, around
 from export.picture.wording import Wording
 from geom.result import Dimension, Frame
 
@@ -42,7 +42,7 @@ class Measure:
         if self.kind == "vertical" and self.side in ("left", "right"):
             nearest = min(self.p[0], self.q[0]) if self.side == "left" else max(self.p[0], self.q[0])
             edge = core[0] if self.side == "left" else core[2]
-            return abs(nearest / per - edge) <= _FAR * sizes.note
+            return bool(abs(nearest / per - edge) <= _FAR * sizes.note)
         return self.side != "inside" and self.kind not in ("aligned", "radius")
 
     def points(self, per: float) -> tuple[Floats, Floats]:
@@ -208,7 +208,7 @@ def oblique(at: Floats, sizes: Sizes, angle: float) -> Path:
 def placed(measure: Measure, text: Text, angle: float, line_at: tuple[float, float], paths: Sequence[Path]) -> Placed:
     """Return a dimension in its place."""
     kinds: dict[str, Literal["ordinate", "radius"]] = {"level": "ordinate", "radius": "radius"}
-    kind = kinds.get(measure.kind, "linear")
+    kind: Literal["linear", "ordinate", "radius"] = kinds.get(measure.kind, "linear")
     return Placed(kind, measure.p, measure.q, measure.value, text, measure.says, angle, line_at, tuple(paths))
 
 

@@ -17,8 +17,8 @@ ANY = HEAVY | LIGHT | TEXT
 class Ground:
     """Cells of one panel and what lies on them, as bits.
 
-    A line is entered by points half a cell apart, so what it may clip unseen is a corner of less than half a cell; texts
-    are asked for with a margin of more than that round them.
+    A line is entered by points half a cell apart, so what it may clip unseen is a corner of less than half a cell;
+    texts are asked for with a margin of more than that round them.
     """
 
     box: Box  # print units
@@ -48,7 +48,7 @@ class Ground:
         self.points(self._spread(corners), bits)
 
     def free(self, corners: Floats, bits: int = ANY, margin: float = 0.0) -> bool:
-        """Return whether a box with corners (4, 2) in turn, and a margin round it, is inside and touches none of `bits`."""
+        """Return whether a box with corners (4, 2) in turn, and a margin, is inside and touches none of `bits`."""
         if margin:
             corners = grown(corners, margin)
         low, high = corners.min(axis=0), corners.max(axis=0)
@@ -75,7 +75,7 @@ class Ground:
         along, up = corners[1] - corners[0], corners[3] - corners[0]
         counts = [max(2, int(np.ceil(np.hypot(*side) / (self.cell / 2))) + 1) for side in (along, up)]
         u, v = np.meshgrid(np.linspace(0, 1, counts[0]), np.linspace(0, 1, counts[1]))
-        return corners[0] + u.ravel()[:, None] * along + v.ravel()[:, None] * up
+        return np.asarray(corners[0] + u.ravel()[:, None] * along + v.ravel()[:, None] * up)
 
     def points(self, points: Floats, bits: int) -> None:
         """Enter points (n, 2)."""
@@ -94,4 +94,4 @@ def grown(corners: Floats, margin: float) -> Floats:
     along, up = corners[1] - corners[0], corners[3] - corners[0]
     along = along / max(float(np.hypot(*along)), 1e-30) * margin
     up = up / max(float(np.hypot(*up)), 1e-30) * margin
-    return corners + np.array([-along - up, along - up, along + up, -along + up])
+    return np.asarray(corners + np.array([-along - up, along - up, along + up, -along + up]))

@@ -9,7 +9,7 @@ from export.picture.dimensions import Measure, oblique, placed
 from export.picture.ground import ANY, HEAVY, LIGHT, TEXT, Ground
 from export.picture.looks import LOOKS
 from export.picture.sizes import Sizes
-from export.picture.values import Floats, Path, Placed, Text
+from export.picture.values import Floats, Path, Placed, Text, xy
 
 _LOOK = LOOKS["dimension"]
 _SLIDES = (0.0, 0.15, -0.15, 0.3, -0.3)  # of the text's middle along the line, in its length
@@ -70,9 +70,9 @@ def _line(measure: Measure, per: float, ground: Ground, sizes: Sizes) -> tuple[F
     if measure.kind == "vertical" and measure.side != "inside":
         return _beside_upright(p, q, measure.side, ground, sizes)
     if measure.kind == "horizontal":
-        p = np.array([p[0], q[1]])
+        p = xy(p[0], q[1])
     elif measure.kind == "vertical":
-        p = np.array([q[0], p[1]])
+        p = xy(q[0], p[1])
     elif measure.side != "inside":
         return _beside(p, q, measure.side, ground, sizes)
     turn = float(np.arctan2(q[1] - p[1], q[0] - p[0]))
@@ -88,15 +88,17 @@ def _beside_upright(p: Floats, q: Floats, side: str, ground: Ground, sizes: Size
     way = -1.0 if side == "left" else 1.0
     edge = min(p[0], q[0]) if side == "left" else max(p[0], q[0])
     offset = next(
-        (way * far * sizes.first_row for far in _OFFSETS
-         if not ground.crosses(*(np.array([edge + way * far * sizes.first_row, y]) for y in (p[1], q[1])), HEAVY | TEXT)),
+        (
+            out for out in (way * far * sizes.first_row for far in _OFFSETS)
+            if not ground.crosses(xy(edge + out, p[1]), xy(edge + out, q[1]), HEAVY | TEXT)
+        ),
         way * sizes.first_row,
     )  # fmt: skip
-    start, end = np.array([edge + offset, p[1]]), np.array([edge + offset, q[1]])
+    start, end = xy(edge + offset, p[1]), xy(edge + offset, q[1])
     turn = np.pi / 2
     paths = [Path(_LOOK, np.stack([start, end])), oblique(start, sizes, turn), oblique(end, sizes, turn)]
     for point, far_end in ((p, start), (q, end)):
-        line = np.stack([point + (way * sizes.gap, 0.0), far_end + (way * sizes.overshoot, 0.0)])
+        line = np.stack([point + xy(way * sizes.gap, 0.0), far_end + xy(way * sizes.overshoot, 0.0)])
         paths.append(Path(_LOOK, line))
         ground.lines(line, LIGHT)
     return start, end, paths
@@ -160,8 +162,8 @@ def _level(measure: Measure, at: Floats, ground: Ground, sizes: Sizes) -> Placed
         for lean in _LEANS:
             foot = at + np.array([lean, -drop]) * sizes.note
             for before in _BEFORE:
-                line = np.array([foot - (before * wide, 0.0), foot + ((1 - before) * wide, 0.0)])
-                box = np.concatenate([line, line[::-1] + (0.0, sizes.note + 0.6 * sizes.gap)])
+                line = np.array([foot - xy(before * wide, 0.0), foot + xy((1 - before) * wide, 0.0)])
+                box = np.concatenate([line, line[::-1] + xy(0.0, sizes.note + 0.6 * sizes.gap)])
                 if ground.free(box, ANY, 0.35 * sizes.gap) and not ground.crosses(
                     at + (foot - at) * 0.3, foot, HEAVY | TEXT
                 ):
@@ -174,7 +176,7 @@ def _level(measure: Measure, at: Floats, ground: Ground, sizes: Sizes) -> Placed
 
 
 def _level_drawn(measure: Measure, leader: tuple[Floats, Floats], line: Floats, sizes: Sizes) -> Placed:
-    flag = line[0] + (1.5 * sizes.gap, 0.0) + 0.6 * sizes.gap * np.array([[-1.0, 1.6], [0.0, 0.0], [1.0, 1.6]])
+    flag = line[0] + xy(1.5 * sizes.gap, 0.0) + 0.6 * sizes.gap * np.array([[-1.0, 1.6], [0.0, 0.0], [1.0, 1.6]])
     start = (float(line[0, 0] + 3.2 * sizes.gap), float(line[0, 1] + 0.6 * sizes.gap))
     text = Text(_LOOK, measure.text, start, sizes.note)
     paths = [Path(_LOOK, np.stack(leader)), Path(_LOOK, line), Path(_LOOK, flag, closed=True)]
@@ -210,7 +212,7 @@ def _texts(says: str, start: Floats, end: Floats, sizes: Sizes) -> Iterator[Text
                 yield Text(_LOOK, says, (float(at[0]), float(at[1])), sizes.note, "centre", angle)
     if abs(angle) > np.pi / 6:
         for slide in _SLIDES:
-            at = middle + slide * step - (0.0, sizes.note / 2)
+            at = middle + slide * step - xy(0.0, sizes.note / 2)
             yield Text(_LOOK, says, (float(at[0] + 1.2 * sizes.gap), float(at[1])), sizes.note)
             yield Text(_LOOK, says, (float(at[0] - 1.2 * sizes.gap), float(at[1])), sizes.note, "right")
 
@@ -226,7 +228,7 @@ def _led_texts(says: str, middle: Floats, sizes: Sizes) -> Iterator[tuple[Text, 
             at = (float(tip[0] + (0.5 if right else -0.5) * sizes.gap), float(tip[1] - sizes.note / 2))
             yield Text(_LOOK, says, at, sizes.note, "left" if right else "right"), tip
         for way in (1.0, -1.0):
-            tip = middle + (0.0, way * ring * sizes.note)
+            tip = middle + xy(0.0, way * ring * sizes.note)
             foot = tip[1] + (0.5 * sizes.gap if way > 0 else -0.5 * sizes.gap - sizes.note)
             for shift in (0.0, 0.25, -0.25):
                 yield Text(_LOOK, says, (float(tip[0] + shift * wide), float(foot)), sizes.note, "centre"), tip

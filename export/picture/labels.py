@@ -1,7 +1,8 @@
 """Marks beside what they name: never across a heavy line, never over one another.
 
 Each mark tries the eight places around its point, then a leader; a crowded view is tried again with smaller marks
-before leaders are drawn, and a mark there is no room for is left to the tables. The grid makes each try constant in time.
+before leaders are drawn, and a mark there is no room for is left to the tables. The grid makes each try constant in
+time.
 """
 
 from collections.abc import Callable, Iterable, Iterator, Sequence
@@ -79,11 +80,8 @@ def place(wanted: Sequence[Wanted], ground: Ground, sizes: Sizes) -> Marks:
 
 
 def _around_all(wanted: Sequence[Wanted], ground: Ground, sizes: Sizes, height: float) -> tuple[Marks, list[Wanted]]:
-    marks, left = Marks(), []
-    for mark in wanted:
-        if not _beside(_tag(mark, height), ground, sizes, marks):
-            left.append(mark)
-    return marks, left
+    marks = Marks()
+    return marks, [mark for mark in wanted if not _beside(_tag(mark, height), ground, sizes, marks)]
 
 
 def _tag(wanted: Wanted, height: float) -> _Tag:
@@ -177,7 +175,7 @@ def _corners(tag: _Tag, middle: Floats, angle: float) -> Floats:
     wide, high = tag.half
     box = np.array([[-wide, -high], [wide, -high], [wide, high], [-wide, high]])
     if angle == 0:
-        return middle + box
+        return np.asarray(middle + box)
     cos, sin = np.cos(angle), np.sin(angle)
     return np.asarray(middle + box @ np.array([[cos, sin], [-sin, cos]]))
 

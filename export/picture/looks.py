@@ -1,8 +1,9 @@
 """The one table that says how each role is drawn: layer, line type, width and colour.
 
-Widths are ISO 128-2 printed widths, 1 : 2 : 4 for construction drawings (0.18 : 0.35 : 0.7 mm); line types are its types
-01 (continuous), 02 (dashed), 04 (long dash, dot) and 05 (long dash, double dot). A drawing must read in black on white,
-white on black and on a poor printer: all is black or white by layer, but what warns (warm) and construction lines (grey).
+Widths are ISO 128-2 printed widths, 1 : 2 : 4 for construction drawings (0.18 : 0.35 : 0.7 mm); line types are its
+types 01 (continuous), 02 (dashed), 04 (long dash, dot) and 05 (long dash, double dot). A drawing must read in black on
+white, white on black and on a poor printer: all is black or white by layer, but what warns (warm) and construction
+lines (grey).
 """
 
 from dataclasses import dataclass

@@ -52,8 +52,9 @@ def contents(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> 
 def picture(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> Picture:
     """Return the picture of a result on the sheet its design names.
 
-    The scale is the largest at which everything fits one sheet. Where no scale brings that about, as the text of many pieces
-    takes more than a sheet whatever the scale, it is the largest at which each view fits one, on as many as it takes.
+    The scale is the largest at which everything fits one sheet. Where no scale brings that about, as the text of many
+    pieces takes more than a sheet whatever the scale, it is the largest at which each view fits one, on as many as it
+    takes.
     """
     found = contents(result, drawing, extra=extra)
     on = sheet(result.setting.drawing.sheet)

@@ -2,6 +2,7 @@
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, field, replace
+from typing import Literal
 
 import numpy as np
 
@@ -18,15 +19,13 @@ from export.picture.values import (
     Circle,
     Floats,
     Group,
-    Links,
     Panel,
     Path,
     Placed,
-    Stroke,
     Text,
     around,
     box_of,
-    shifted,
+    xy,
 )
 from export.picture.views import Drawing, Seen, is_plan, lines_of, seen
 from export.picture.wording import Wording
@@ -40,7 +39,7 @@ _MOST_CELLS = 4e6  # of one grid: a sheet of A0 at half a millimetre
 
 @dataclass(frozen=True)
 class Print:
-    """How a panel is printed: metres of geometry in a unit of print, sizes of what is not geometry, words of figures."""
+    """How a panel is printed: metres of geometry in a unit of print, sizes of the rest, words of figures."""
 
     per: float
     sizes: Sizes
@@ -113,7 +112,7 @@ def elevation(subject: Subject, print_: Print, *, marks: bool = True) -> Panel:
         subject.piece.mark, subject.seen.strokes, subject.seen.links, tuple(drawn.paths), tuple(drawn.circles),
         tuple(drawn.texts),
     )  # fmt: skip
-    kind = "plan" if is_plan(subject.view.frame) else "elevation"
+    kind: Literal["plan", "elevation"] = "plan" if is_plan(subject.view.frame) else "elevation"
     name = subject.piece.mark if subject.view is subject.piece.views[0] else f"{subject.piece.mark} {subject.view.name}"
     panel = Panel(
         name, kind, per, (group,), tuple(drawn.dimensions), (), core, around(core, drawn.box), dropped=drawn.dropped
@@ -148,7 +147,7 @@ def _symbol(  # noqa: PLR0913 - what a symbol depends on
         case "support" if not plan:
             drawn.paths += symbols.support(at, sizes, above=above)
             away = 1.0 if above else -1.0
-            at = at + (0.0, away * 0.7 * sizes.symbol)
+            at = at + xy(0.0, away * 0.7 * sizes.symbol)
             return Wanted(label.text, at, label.role, 0.75 * sizes.symbol, first=(0, int(away)))
         case "support" | "held point":
             drawn.paths += symbols.held_point(at, sizes)
@@ -156,12 +155,12 @@ def _symbol(  # noqa: PLR0913 - what a symbol depends on
         case "load" if plan:
             drawn.circles.append(symbols.dot(at, sizes, "load"))
         case "load" if label.reach > 0:
-            tip = at - (0.0, label.reach / print_.per)
+            tip = at - xy(0.0, label.reach / print_.per)
             drawn.paths += [Path(LOOKS["load"], np.stack([at, tip])), *symbols.bob(tip, sizes)]
-            at, clear = tip + (0.0, 0.5 * sizes.arrow), 0.5 * sizes.arrow
+            at, clear = tip + xy(0.0, 0.5 * sizes.arrow), 0.5 * sizes.arrow
         case "load":
             drawn.paths += symbols.load_arrow(at, sizes, above=False)
-            at, clear = at - (0.0, 1.6 * sizes.arrow), 0.5 * sizes.arrow
+            at, clear = at - xy(0.0, 1.6 * sizes.arrow), 0.5 * sizes.arrow
         case "node":
             drawn.circles.append(symbols.dot(at, sizes, "node"))
     return Wanted(label.text, at, label.role, clear, along)
@@ -174,10 +173,13 @@ def _with_levels(found: Sequence[Measure], core: Box, per: float, sizes: Sizes) 
     return (core[0], min(core[1], foot), core[2], core[3])
 
 
-def _mark(  # noqa: PLR0913 - what marks depend on
+def _mark(
     subject: Subject, wanted: Sequence[Wanted], beside: Sequence[Measure], ground: Ground, print_: Print, drawn: Drawn
 ) -> None:
-    """Place the marks, then the dimensions inside the figure, which find a place further off; of many marks only supports."""
+    """Place the marks, then the dimensions inside the figure, which find a place further off.
+
+    Of many marks only those of supports go first.
+    """
     enter(ground, subject.seen, drawn, print_.per)
     few = len(wanted) <= _FEW
     first = labels.place([mark for mark in wanted if few or mark.role == "support"], ground, print_.sizes)

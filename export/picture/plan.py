@@ -34,7 +34,7 @@ def site(result: Result, drawing: Drawing) -> Site:
 
 def wanted(result: Result) -> bool:
     """Return whether a plan tells more than the views do: not where the only piece is drawn in plan already."""
-    return not (len(result.pieces) == 1 and is_plan(result.pieces[0].frame))
+    return not (len(result.pieces) == 1 and any(is_plan(view.frame) for view in result.pieces[0].views))
 
 
 def plan(site: Site, print_: Print, *, marks: bool = True) -> Panel:

@@ -7,8 +7,8 @@ from dataclasses import dataclass
 class Sizes:
     """Sizes on the print, in its own unit: millimetres on paper, pixels on a screen. Text by its capitals.
 
-    Text heights are of the ISO 3098 series 1.8, 2.5, 3.5, 5, 7; the first dimension line stands 8 mm off the figure and the
-    others 7 mm apart (ISO 129-1 leaves the distances open; common practice is 10 and 7 or 8).
+    Text heights are of the ISO 3098 series 1.8, 2.5, 3.5, 5, 7; the first dimension line stands 8 mm off the figure and
+    the others 7 mm apart (common practice is 8 to 10 and 7).
     """
 
     note: float = 2.5

@@ -4,7 +4,7 @@ import numpy as np
 
 from export.picture.looks import LOOKS
 from export.picture.sizes import Sizes
-from export.picture.values import Circle, Floats, Path
+from export.picture.values import Circle, Floats, Path, xy
 
 _MOST_STROKES = 400  # of the hatching of one line of ground: enough for two metres of paper
 
@@ -45,9 +45,9 @@ def bob(tip: Floats, sizes: Sizes) -> list[Path]:
 def load_arrow(at: Floats, sizes: Sizes, *, above: bool) -> list[Path]:
     """Return an arrow downwards for a load: hung under its point, or standing on it."""
     long, head = 3.2 * sizes.arrow, sizes.arrow
-    tip = at if above else at + (0.0, -long)
+    tip = at if above else at + xy(0.0, -long)
     return [
-        Path(LOOKS["load"], np.stack([tip + (0.0, long), tip])),
+        Path(LOOKS["load"], np.stack([tip + xy(0.0, long), tip])),
         Path(LOOKS["load"], tip + np.array([[-0.3 * head, head], [0, 0], [0.3 * head, head]])),
     ]
 
@@ -67,7 +67,7 @@ def ground_hatching(points: Floats, sizes: Sizes) -> list[Path]:
 def north(at: Floats, sizes: Sizes) -> list[Path]:
     """Return an arrow up the sheet, its foot at a printed point."""
     high, half = 2.4 * sizes.title, 0.25 * sizes.title
-    tip = at + (0.0, high)
+    tip = at + xy(0.0, high)
     return [
         Path(LOOKS["note"], np.stack([at, tip])),
         Path(LOOKS["note"], tip + np.array([[-half, -2 * half], [0, 0], [half, -2 * half]])),
@@ -80,5 +80,5 @@ def _strokes(line: Floats, drop: float, apart: float, role: str) -> list[Path]:
     count = min(_MOST_STROKES, max(2, round(reach[-1] / apart)))
     at = (np.arange(count) + 0.5) / count * reach[-1]
     tops = np.stack([np.interp(at, reach, line[:, 0]), np.interp(at, reach, line[:, 1])], axis=1)
-    feet = tops + (drop if drop < 0 else abs(drop), drop)
+    feet = tops + xy(drop, drop)
     return [Path(LOOKS[role], np.stack([top, foot])) for top, foot in zip(tops, feet, strict=True)]

@@ -1,7 +1,8 @@
 """What a picture is made of. Geometry is in metres, all that is printed beside it in the print's own unit.
 
-A panel shows one view: `per` metres of geometry are one unit of print there, so that a geometry point g and a printed point
-p lie at g / per + at and p + at on the print. The one place where either becomes another unit is the file that draws it.
+A panel shows one view: `per` metres of geometry are one unit of print there, so that a geometry point g and a printed
+point p lie at g / per + at and p + at on the print. The one place where either becomes another unit is the file that
+draws it.
 """
 
 from dataclasses import dataclass, field
@@ -53,7 +54,7 @@ class Links:
             + along[None, :, None, None] * ways[:, None, None]
             + across[None, None, :, None] * sides[:, None, None]
         )
-        return points.reshape(-1, 2)
+        return np.asarray(points.reshape(-1, 2))
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -115,8 +116,8 @@ class Text:
 class Placed:
     """A dimension in its place: what it measures (p, q (2,) m), and how it is printed.
 
-    A "linear" one measures along `angle` (rad), its line through `line_at` (printed); an "ordinate" the height of q over
-    the level p lies on; a "radius" from p to q.
+    A "linear" one measures along `angle` (rad), its line through `line_at` (printed); an "ordinate" the height of q
+    over the level p lies on; a "radius" from p to q.
     """
 
     kind: Literal["linear", "ordinate", "radius"]
@@ -200,6 +201,11 @@ class Picture:
     sheets: int = 1
     room: tuple[float, float] = (0.0, 0.0)  # drawing space of a sheet
     cautions: tuple[str, ...] = field(default=())
+
+
+def xy(x: float, y: float) -> Floats:
+    """Return a point or a step as an array (2,)."""
+    return np.array([x, y])
 
 
 def box_of(points: Floats) -> Box:

@@ -1,4 +1,4 @@
-"""From a piece and the plane it is looked at in to strokes: the geometry of one view, without anything said about it."""
+"""From a piece and the plane it is looked at in to strokes: the geometry of one view, nothing said about it."""
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
@@ -11,7 +11,7 @@ from geom.arcfit import fit_arcs
 from geom.curves import Curve
 from geom.errors import SolveError
 from geom.result import Frame, Line, Piece, View
-from geom.solids import Balls, Body, Solid, Union
+from geom.solids import Balls, Bars, Body, Solid, Union
 from geom.solids import Links as LinkBody
 
 # Points nearer than this are one (m): a tenth of what any shop sees at any scale, far over rounding of coordinates.
@@ -141,22 +141,27 @@ def _singles(body: Body) -> Iterable[Body]:
         yield body
 
 
-def _links(solids: Iterable[Solid], frame: Frame) -> Iterable[Links]:
-    """Links whose chains lie in the plane, and beads, as they are seen."""
-    for body in bodies(solids):
+def _links(solids: Iterable[Solid], frame: Frame) -> list[Links]:
+    """Links of chains that lie in the plane, and beads, as they are seen; none where some chain leaves the plane."""
+    rows: list[Links] = []
+    found = list(bodies(solids))
+    if any(isinstance(body, Bars) for body in found):  # the balls of a frame are its nodes
+        return []
+    for body in found:
         if isinstance(body, Balls) and len(body.places):
             count, size = len(body.places), 2 * body.radius
             level, face = np.zeros(count), np.ones(count, dtype=np.bool_)
-            yield Links(0.0, size, size, frame.flat(body.places), level, face)
+            rows.append(Links(0.0, size, size, frame.flat(body.places), level, face))
         elif isinstance(body, LinkBody) and len(body.places):
             along, square = body.turns[:, :, 0], body.turns[:, :, 2]
             shown = np.stack([along @ frame.along, along @ frame.up], axis=1)
             if (np.hypot(shown[:, 0], shown[:, 1]) < _IN_PLANE).any():
-                continue
+                return []
             angles = np.arctan2(shown[:, 1], shown[:, 0])
             face = np.abs(square @ np.cross(frame.along, frame.up)) > _FACE_ON
             link = body.link
-            yield Links(link.wire, link.pitch, link.width, frame.flat(body.places), angles, face)
+            rows.append(Links(link.wire, link.pitch, link.width, frame.flat(body.places), angles, face))
+    return rows
 
 
 def _box(strokes: Sequence[Stroke], links: Sequence[Links]) -> Box:
