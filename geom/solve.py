@@ -13,7 +13,7 @@ from geom.design.reader import Design, Item, feature_name
 from geom.errors import Problem
 from geom.fields import Feature
 from geom.registry import Fault, Kind, Layout, Outcome, Path, Refusal, kinds
-from geom.result import NAN, Case, Caution, Piece, Pull, Result, Support, SupportCase, fixed
+from geom.result import NAN, Case, Caution, Floats, Piece, Pull, Result, Standing, Support, SupportCase, fixed
 from geom.setting.options import Setting
 from geom.setting.stock import Stock
 from geom.shop.buying import stock_plans
@@ -118,7 +118,7 @@ def _clashes(design: Design, pieces: Sequence[Piece]) -> list[Problem]:
     for piece in pieces:
         for made in {piece.mark, *(part.mark for part in piece.parts), *(cut.mark for cut in piece.cuts)}:
             other = seen.setdefault(made.casefold(), piece.mark)
-            if other != piece.mark:
+            if other.casefold() != piece.mark.casefold():  # two pieces of one mark are the reader's to report
                 item = next(i for i in design.items if i.feature.mark == piece.mark)
                 text = f'"{made}" would be the mark of two things, here and in "{other}"; give another mark'
                 problems.append(Problem(design.positions.line((*item.path, "mark")), feature_name(item), "mark", text))
@@ -168,18 +168,18 @@ def _cases(piece: Piece) -> Iterable[Case]:
         yield from part.cases or ()
 
 
-def _sum(vectors: Iterable[np.ndarray]) -> np.ndarray:
-    return np.sum(list(vectors), axis=0)
+def _sum(vectors: Iterable[Floats]) -> Floats:
+    return np.asarray(np.sum(list(vectors), axis=0))
 
 
-def _case(case: str, standing: object, pull: np.ndarray, height: float | None) -> SupportCase:
+def _case(case: str, standing: Standing, pull: Floats, height: float | None) -> SupportCase:
     """Moment at the foot: the level part of the pull times the height over the foot.
 
     Pulls that balance leave rounding, some 1e-16 of each: what is under 1e-12 of the whole is nought.
     """
     pull = np.where(np.abs(pull) < 1e-12 * np.abs(pull).max(), 0.0, pull)
     moment = NAN if height is None else float(np.hypot(pull[0], pull[1])) * height
-    return SupportCase(case, standing, fixed(pull, 3), float(np.linalg.norm(pull)), moment)  # type: ignore[arg-type]
+    return SupportCase(case, standing, fixed(pull, 3), float(np.linalg.norm(pull)), moment)
 
 
 def _stocks(pieces: Sequence[Piece]) -> dict[str, Stock]:

@@ -125,18 +125,21 @@ class _Reader:
             return None
         return read if len(self.problems) == before else None
 
-    def _groups(self, model: type[Section], raw: Mapping[str, Any], path: Path, feature: str) -> None:
+    def _groups(self, model: type[Section], raw: Mapping[str, Any], path: Path, feature: str, inner: Path = ()) -> None:
         """Complain where not exactly one key of a group is given (a misspelt or a later key counts as given)."""
         known = model.keys()
         strays = [key for key in raw if key not in known]
         groups = [(group, True) for group in model.one_of] + [(group, False) for group in model.at_most_one_of]
         for group, needed in groups:
-            given = [key for key in group if key in raw]
+            given = [key for key in raw if key in group]
             if len(given) > 1:
                 listed = " and ".join(f"`{key}`" for key in given)
-                self.add((*path, given[1]), feature, given[1], f"{listed} are given together; give just one of them")
+                text = f"{listed} are given together; give just one of them"
+                self.add((*path, given[1]), feature, _key_text((*inner, given[1])), text)
             elif not given and needed and not any(near(stray, group) or stray in model.later for stray in strays):
-                self.add(path, feature, group[0], f"is missing; give one of {', '.join(group)}")
+                self.add(path, feature, _key_text((*inner, group[0])), f"is missing; give one of {', '.join(group)}")
+        for key, table in _tables_in(model, raw):
+            self._groups(_model_at(model, (*key, "")), table, (*path, *key), feature, (*inner, *key))
 
     def _complaints(
         self, error: ValidationError, raw: Mapping[str, Any], path: Path, feature: str, model: type[Section]
@@ -245,21 +248,19 @@ def feature_name(item: Item) -> str:
     return f'{item.kind} "{item.feature.mark}"'
 
 
-def _user_path(loc: Sequence[str | int], raw: Any) -> Path:  # noqa: ANN401
+def _user_path(loc: Sequence[str | int], raw: object) -> Path:
     """Keep the part of pydantic's path that is the user's: its tags of unions and validators are dropped."""
     path: list[str | int] = []
     here = raw
     for step in loc:
-        if (isinstance(here, dict) and step in here) or (
-            isinstance(here, list) and isinstance(step, int) and step < len(here)
-        ):
-            here = here[step]
-        elif isinstance(here, dict) and isinstance(step, str):
+        if isinstance(here, dict):
             path.append(step)
-            break
-        else:
-            continue
-        path.append(step)
+            if step not in here:  # a key that is missing
+                break
+            here = here[step]
+        elif isinstance(here, list) and isinstance(step, int) and step < len(here):
+            path.append(step)
+            here = here[step]
     return tuple(path)
 
 
@@ -279,6 +280,17 @@ def _model_at(model: type[Section], loc: Path) -> type[Section]:
         inner = _section_in(entry.annotation) if entry is not None else None
         model = inner or model
     return model
+
+
+def _tables_in(model: type[Section], raw: Mapping[str, Any]) -> Iterable[tuple[Path, Mapping[str, Any]]]:
+    """Yield the tables within a table that have a model of their own, with their paths."""
+    for key, value in raw.items():
+        if _model_at(model, (key, "")) is model:
+            continue
+        if isinstance(value, dict):
+            yield (key,), value
+        elif isinstance(value, list):
+            yield from (((key, n), entry) for n, entry in enumerate(value) if isinstance(entry, dict))
 
 
 def _section_in(annotation: Any) -> type[Section] | None:  # noqa: ANN401 - any type expression
@@ -355,7 +367,7 @@ def _count(reader: _Reader, raw: Mapping[str, Any], models: Iterable[str]) -> No
         reader.problems.append(
             Problem(1, "", "", f"{pieces} pieces are more than the {MOST_PIECES} of one design; divide it")
         )
-    elif not pieces:
+    elif not pieces and not reader.problems:
         listed = ", ".join(f"[[{name}]]" for name in models)
         reader.problems.append(Problem(1, "", "", f"the design has no piece; add one of {listed}"))
 

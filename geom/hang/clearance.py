@@ -45,4 +45,4 @@ def stretch(profile: Floats, start: float, end: float) -> Floats:
     inner = profile[(profile[:, 0] > low) & (profile[:, 0] < high)]
     ends = np.interp([low, high], profile[:, 0], profile[:, 1])
     whole = np.vstack([[low, ends[0]], inner, [high, ends[1]]])
-    return whole - np.array([start, 0.0])
+    return np.asarray(whole - np.array([start, 0.0]), dtype=np.float64)

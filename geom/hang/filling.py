@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Collection, Mapping, Sequence
 from dataclasses import dataclass
+from typing import Any, Literal
 
 import numpy as np
 from numpy.typing import NDArray
@@ -41,7 +42,7 @@ from geom.solids import Link, Links, Solid, Sweep, link_frames
 from geom.units import STANDARD_GRAVITY
 
 Floats = NDArray[np.float64]
-Columns = Mapping[str, NDArray[np.generic]]
+Columns = Mapping[str, NDArray[Any]]
 
 _UNITS = {
     "length": Unit("m"), "links": Unit(""), "slack": Unit(""), "sag": Unit("m"), "lowest": Unit("m"), "pull": Unit("N"),
@@ -94,7 +95,7 @@ def fill(
     }
 
 
-def _columns(wish: Wish, made: Made) -> dict[str, NDArray[np.generic]]:
+def _columns(wish: Wish, made: Made) -> dict[str, NDArray[Any]]:
     """Everything that is computed, as arrays over the members: what follows only picks from them."""
     hang = made.made
     pulls = hang.pulls(wish.weight)
@@ -111,7 +112,7 @@ def _columns(wish: Wish, made: Made) -> dict[str, NDArray[np.generic]]:
     } | {f"made_{fact}": value for fact, value in differences.items()}  # fmt: skip
 
 
-def _piece(member: Asked, at: Mapping[str, np.generic], setting: Setting) -> Piece:
+def _piece(member: Asked, at: Mapping[str, Any], setting: Setting) -> Piece:
     start, end = fixed(member.start.at, 3), fixed(member.end.at, 3)
     shape = Shape(start, end, float(at["parameter"]), float(at["length"]))
     figures = _figures(member, at, shape, setting)
@@ -167,7 +168,7 @@ def chain_solids(member: Asked, shape: Shape, figures: HangingFigures) -> tuple[
     return ()
 
 
-def _figures(member: Asked, at: Mapping[str, np.generic], shape: Shape, setting: Setting) -> HangingFigures:
+def _figures(member: Asked, at: Mapping[str, Any], shape: Shape, setting: Setting) -> HangingFigures:
     base = member.start.at[2]
     lowest = base + float(at["lowest"])
     clearance, clearance_at = _clearance(member, at, shape)
@@ -198,10 +199,10 @@ def _figures(member: Asked, at: Mapping[str, np.generic], shape: Shape, setting:
     )
 
 
-def _links(member: Asked, at: Mapping[str, np.generic]) -> LinksFigures:
+def _links(member: Asked, at: Mapping[str, Any]) -> LinksFigures:
     count, pitch = int(at["count"]), float(member.stock.pitch or NAN)
     base = member.start.at[2]
-    rows = zip(at["counts"], at["beside_sag"], at["beside_lowest"], at["beside_pull"], strict=True)  # type: ignore[call-overload]
+    rows = zip(at["counts"], at["beside_sag"], at["beside_lowest"], at["beside_pull"], strict=True)
     same = bool(links.ends_same_way(count, member.quarter_turns))
     return LinksFigures(
         count=count,
@@ -214,7 +215,7 @@ def _links(member: Asked, at: Mapping[str, np.generic]) -> LinksFigures:
     )
 
 
-def _clearance(member: Asked, at: Mapping[str, np.generic], shape: Shape) -> tuple[float, float]:
+def _clearance(member: Asked, at: Mapping[str, Any], shape: Shape) -> tuple[float, float]:
     """Least clearance over the ground and its plan distance from the start; NaN without ground."""
     if member.ground is None or shape.parameter == 0.0:
         return NAN, NAN
@@ -243,7 +244,7 @@ def _material(member: Asked, figures: HangingFigures, setting: Setting) -> float
     """Length of material in one member, m: whole links, or a rope's cut."""
     if figures.links is not None:
         return figures.links.count * figures.links.pitch
-    return cut_length(figures.pin_to_pin, takes=member.takes, grips=member.grips, step=setting.shop.step)
+    return float(cut_length(figures.pin_to_pin, takes=member.takes, grip=member.grips, step=setting.shop.step))
 
 
 def _cut(member: Asked, figures: HangingFigures, one: float, setting: Setting) -> Cut:
@@ -285,7 +286,7 @@ def wanted_of(fact: str, value: float) -> Quantity:
     return Quantity(_INTENDED.get(fact, fact), float(value), _UNITS[fact])
 
 
-def _difference(member: Asked, at: Mapping[str, np.generic], setting: Setting) -> Quantity:
+def _difference(member: Asked, at: Mapping[str, Any], setting: Setting) -> Quantity:
     """Made minus intended. Of rope and rod: what rounding the cut to a step does."""
     name, unit = _INTENDED.get(member.fact, member.fact), _UNITS[member.fact]
     if member.fact == "links":
@@ -296,9 +297,9 @@ def _difference(member: Asked, at: Mapping[str, np.generic], setting: Setting) -
     return Quantity(name, -change if member.fact == "lowest" else change, unit)
 
 
-def _rounded_off(member: Asked, at: Mapping[str, np.generic], setting: Setting) -> float:
+def _rounded_off(member: Asked, at: Mapping[str, Any], setting: Setting) -> float:
     exact = float(at["length"])
-    cut = cut_length(exact, takes=member.takes, grips=member.grips, step=setting.shop.step)
+    cut = float(cut_length(exact, takes=member.takes, grip=member.grips, step=setting.shop.step))
     hang = catenary.from_length(float(at["span"]), float(at["level"]), cut + member.takes - member.grips)
     values = {
         "length": float(hang.length) - exact,
@@ -307,7 +308,7 @@ def _rounded_off(member: Asked, at: Mapping[str, np.generic], setting: Setting) 
         "lowest": float(hang.lowest) - float(at["lowest"]),
         "pull": (float(hang.parameter) - float(at["parameter"])) * member.stock.weight,
     }
-    return values[member.fact]
+    return float(values[member.fact])
 
 
 def _as_hung(figures: HangingFigures, setting: Setting) -> Case:
@@ -337,7 +338,7 @@ def dimensions(shape: Shape, figures: HangingFigures) -> tuple[Dimension, ...]:
     ]
     if figures.level_difference:
         rise = abs(figures.level_difference)
-        side = "right" if figures.level_difference > 0 else "left"
+        side: Literal["left", "right"] = "right" if figures.level_difference > 0 else "left"
         found.append(Dimension("vertical", shape.start, shape.end, rise, "level difference", side))
     if 0.0 < figures.lowest_at < figures.span:
         found.append(Dimension("horizontal", shape.start, lowest, figures.lowest_at, "to lowest point", "below", 0))
@@ -355,7 +356,7 @@ def _labels(member: Asked) -> tuple[Label, ...]:
     )
 
 
-def _pulls(member: Asked, at: Mapping[str, np.generic], shape: Shape) -> tuple[Pull, Pull]:
+def _pulls(member: Asked, at: Mapping[str, Any], shape: Shape) -> tuple[Pull, Pull]:
     """Pull on each support: level towards the other end, down its share of the weight and the fittings there."""
     level = float(at["horizontal"]) * shape.along
     down_from = float(at["down_from"]) + member.fit_from.mass * STANDARD_GRAVITY

@@ -121,7 +121,7 @@ def _pulls(mark: str, bays: Sequence[Piece]) -> tuple[Pull, ...]:
     return tuple(
         replace(pull, support=_support_mark(mark, pull, number, len(bays), last=last))
         for number, bay in enumerate(bays)
-        for last, pull in enumerate(bay.pulls)
+        for last, pull in zip((False, True), bay.pulls, strict=True)
     )
 
 

@@ -118,7 +118,8 @@ def _least(reach: Floats, pitch: Floats, parity: NDArray[np.str_]) -> Ints:
     """Fewest links, of the parity asked for, longer than `reach` together: just as long would pull without end."""
     least = np.maximum(np.floor(reach / pitch).astype(np.int64) + 1, 1)
     odd = least % 2 == 1
-    return least + ((parity == "odd") & ~odd) + ((parity == "even") & odd)
+    more: Ints = (((parity == "odd") & ~odd) + ((parity == "even") & odd)).astype(np.int64)
+    return least + more
 
 
 def neighbours(wish: Wish, count: Ints) -> tuple[Ints, Hang]:

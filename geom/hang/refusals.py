@@ -24,15 +24,17 @@ def refusals(members: Sequence[Asked], wish: Wish, made: Made, setting: Setting)
     Only members without a curve, or with one that no shop could make, are looked at one by one.
     """
     chord = np.hypot(wish.span, wish.level_difference)
-    taut = ~(made.made.excess > LEAST_SLACK * chord)
+    taut = ~((made.made.excess > LEAST_SLACK * chord) & (made.wished.excess > LEAST_SLACK * chord))
     many = made.count > MOST_LINKS
     bare = np.array([member.stock.counted for member in members]) & (made.count < 1)
     odd = np.array([member.fact == "links" and not _has_parity(int(member.value), member.parity) for member in members])
     no_links = np.array([member.fact == "links" and not member.stock.counted for member in members])
-    doubtful = taut | many | bare | odd | no_links | ~np.isfinite(made.made.length)
+    cut = made.made.length - wish.takes + np.array([member.grips for member in members])
+    nothing = ~np.isfinite(wish.pitch) & ~(cut >= setting.shop.step)
+    doubtful = taut | many | bare | odd | no_links | nothing | ~np.isfinite(made.made.length)
     found = {}
-    for number in np.flatnonzero(doubtful):
-        found[int(number)] = _reason(members[number], float(chord[number]), int(made.least[number]), setting)
+    for number in np.flatnonzero(doubtful).tolist():
+        found[number] = _reason(members[number], float(chord[number]), int(made.least[number]), setting)
     return found
 
 
@@ -66,6 +68,9 @@ def _reasons(member: Asked, chord: float, least: int, setting: Setting) -> Itera
         yield refuse("lowest", f"{text}; give less than that")
     if member.stock.counted:
         yield _whole_links(member, chord, least, setting)
+    if member.takes - member.grips >= chord:
+        text = f"take {say(member.takes)}, which leaves no {member.stock.kind} to cut"
+        yield refuse("fittings", f"{text} over {say(chord)}; give shorter fittings or a longer member")
     text = f"leaves the member so taut over {say(chord)} that its pull has no figure"
     yield refuse(fact, f"{text}; give it more slack")
 

@@ -134,6 +134,7 @@ def _bay(run: Run, number: int, value: float, other: Bay | None, reach: np.ndarr
                     "to": other.fittings.to if other.fittings.to is not None else fits.to,
                 }
             )
+    keys: dict[str, Any] = {fact: value}
     return Hanging.model_construct(
         mark=f"{run.mark}.{number + 1}",
         copies=run.copies,
@@ -144,7 +145,7 @@ def _bay(run: Run, number: int, value: float, other: Bay | None, reach: np.ndarr
         round=rounding,
         fittings=fits,
         clear=_ground(run, float(reach[number]), float(reach[number + 1])),
-        **{fact: value},
+        **keys,
     )
 
 

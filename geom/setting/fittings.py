@@ -62,10 +62,9 @@ def _fitting(raw: Any, info: ValidationInfo) -> Fitting:  # noqa: ANN401 - as th
     if isinstance(raw, str) and (raw in known(info).named.get("fitting", {}) or not raw[:1].isdigit()):
         entry: Fitting = look_up("fitting", raw, info)
         return entry
-    try:
-        return Fitting(takes=_TAKEN.validate_python(raw, context=info.context))
-    except ValueError as error:
-        raise ValueError(f"{say(raw)} is no fitting; give a fitting's name or the length it takes") from error
+    if isinstance(raw, bool) or not isinstance(raw, str | int | float):
+        raise ValueError(f"{say(raw)} is no fitting; give a fitting's name or the length it takes")
+    return Fitting(takes=_TAKEN.validate_python(raw, context=info.context))
 
 
 def _end(raw: Any, info: ValidationInfo) -> End:  # noqa: ANN401
