@@ -121,7 +121,7 @@ def test_meshes_of_an_outline_whose_corners_point_outward_never_fold_over(
         ([[0, 0, 0], [1, 1, 0], [2, 2, 0], [3, 3, 0]], {"spacing": 1.0}, "enclose no area"),
         ([[0, 0, 0], [4, 0, 0], [1, 1, 0], [0, 4, 0]], {"spacing": 1.0}, "corner 3 points inward"),
         ([[0, 0, 0], [0, 4, 0], [1, 1, 0], [4, 0, 0]], {"spacing": 1.0}, "corner 3 points inward"),
-        (COURT, {"spacing": 7.0}, "a spacing of 7 m does not fit an outline whose longest side is 6 m"),
+        (COURT, {"spacing": 7.0}, "7 m does not fit an outline whose longest side is 6 m on plan"),
         (COURT, {"spacing": 0.0}, "give more than 0"),
         (COURT, {"spacing": 0.005}, "give a coarser net"),
         (COURT, {"divisions": (0, 3)}, "0 by 3 meshes make no net"),

@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
+from collections.abc import Callable
+from dataclasses import dataclass, field, replace
 
 import numpy as np
 from numpy.typing import ArrayLike
@@ -42,6 +43,8 @@ class Pattern:
         Nodes on the outline, corners among them, in order round it from the first corner.
     rims : tuple of ndarray of int
         Nodes round each hole, in order.
+    spacings : ndarray, shape (k, 2, 3), m
+        Pairs of points a mesh apart: what is worth dimensioning of it.
     """
 
     outline: Floats
@@ -51,6 +54,7 @@ class Pattern:
     corners: Indices
     boundary: Indices
     rims: tuple[Indices, ...] = ()
+    spacings: Floats = field(default_factory=lambda: np.zeros((0, 2, 3)))
 
     def __post_init__(self) -> None:
         object.__setattr__(self, "outline", fixed(self.outline, -1, 3))
@@ -60,6 +64,7 @@ class Pattern:
         object.__setattr__(self, "corners", indices(self.corners))
         object.__setattr__(self, "boundary", indices(self.boundary))
         object.__setattr__(self, "rims", tuple(indices(rim) for rim in self.rims))
+        object.__setattr__(self, "spacings", fixed(self.spacings, -1, 2, 3))
 
 
 def square(
@@ -68,6 +73,7 @@ def square(
     divisions: tuple[int, int] | None = None,
     spacing: float | None = None,
     edge_members: bool = True,
+    say: Callable[[float], str] = "{:g} m".format,
 ) -> Pattern:
     """Return a grid of four-sided meshes over a four-cornered outline.
 
@@ -86,6 +92,8 @@ def square(
         parts, at least one; lengths are taken on plan.
     edge_members : bool
         False leaves out the members along the outline, and with them the corners, where nothing would meet.
+    say : callable
+        How a length in metres is put in a refusal.
 
     Raises
     ------
@@ -94,7 +102,7 @@ def square(
     """
     corners = np.asarray(outline, dtype=np.float64)
     _check_outline(corners)
-    nu, nv = _divisions(corners, divisions, spacing)
+    nu, nv = _divisions(corners, divisions, spacing, say)
     whole = _grid(corners, nu, nv)
     return whole if edge_members else _without_edges(whole)
 
@@ -133,10 +141,12 @@ def _crosses(plan: Floats, first: int) -> bool:
     return _cross(b - a, c - a) * _cross(b - a, d - a) < 0.0 and _cross(d - c, a - c) * _cross(d - c, b - c) < 0.0
 
 
-def _divisions(corners: Floats, divisions: tuple[int, int] | None, spacing: float | None) -> tuple[int, int]:
+def _divisions(
+    corners: Floats, divisions: tuple[int, int] | None, spacing: float | None, say: Callable[[float], str]
+) -> tuple[int, int]:
     if (divisions is None) == (spacing is None):
         raise PatternError("spacing", "give spacing or divisions, one of the two")
-    nu, nv = divisions if divisions is not None else _from_spacing(corners, spacing or 0.0)
+    nu, nv = divisions if divisions is not None else _from_spacing(corners, spacing or 0.0, say)
     if nu < 1 or nv < 1:
         raise PatternError("divisions", f"{nu} by {nv} meshes make no net; give at least 1 each way")
     count = nu * (nv + 1) + nv * (nu + 1)
@@ -149,13 +159,13 @@ def _divisions(corners: Floats, divisions: tuple[int, int] | None, spacing: floa
     return nu, nv
 
 
-def _from_spacing(corners: Floats, spacing: float) -> tuple[int, int]:
+def _from_spacing(corners: Floats, spacing: float, say: Callable[[float], str]) -> tuple[int, int]:
     sides = np.linalg.norm((np.roll(corners, -1, axis=0) - corners)[:, :2], axis=1)
     if not 0.0 < spacing <= sides.max():
         raise PatternError(
             "spacing",
-            f"a spacing of {spacing:g} m does not fit an outline whose longest side is {sides.max():g} m "
-            "on plan; give more than 0 and at most that",
+            f"{say(spacing)} does not fit an outline whose longest side is {say(float(sides.max()))} on plan; "
+            "give more than 0 and at most that",
         )
     along, across = max(sides[0], sides[2]), max(sides[1], sides[3])
     return max(1, math.floor(along / spacing + 0.5)), max(1, math.floor(across / spacing + 0.5))
@@ -165,6 +175,8 @@ def _grid(corners: Floats, nu: int, nv: int) -> Pattern:
     u = (np.arange(nu + 1) / nu)[None, :, None]
     v = (np.arange(nv + 1) / nv)[:, None, None]
     first, second, third, fourth = corners
+    steps = [(first, first + (second - first) / nu)] if nu > 1 else []
+    steps += [(second, second + (third - second) / nv)] if nv > 1 else []
     nodes = (1 - v) * ((1 - u) * first + u * second) + v * ((1 - u) * fourth + u * third)
     at = np.arange((nu + 1) * (nv + 1)).reshape(nv + 1, nu + 1)
     along = np.stack([at[:, :-1], at[:, 1:]], axis=-1)
@@ -179,6 +191,7 @@ def _grid(corners: Floats, nu: int, nv: int) -> Pattern:
         edge=np.concatenate([edge_along.ravel(), edge_across.ravel()]),
         corners=at[[0, 0, -1, -1], [0, -1, -1, 0]],
         boundary=np.concatenate([at[0, :-1], at[:-1, -1], at[-1, :0:-1], at[:0:-1, 0]]),
+        spacings=np.array(steps).reshape(-1, 2, 3),
     )
 
 
@@ -193,8 +206,8 @@ def _without_edges(whole: Pattern) -> Pattern:
     kept = np.zeros(len(whole.nodes), dtype=np.bool_)
     kept[members] = True
     number = np.cumsum(kept) - 1
-    return Pattern(
-        outline=whole.outline,
+    return replace(
+        whole,
         nodes=whole.nodes[kept],
         members=number[members],
         edge=np.zeros(len(members), dtype=np.bool_),
