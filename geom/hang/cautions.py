@@ -28,8 +28,7 @@ def cautions(member: Asked, figures: HangingFigures, wished: float, setting: Set
             "Irvine, Cable Structures, 1981, ch. 1",
         ),
     ]  # fmt: skip
-    if member.stock.scope:
-        found.append(Caution("not for lifting", member.mark, member.stock.scope, member.stock.source))
+    found += _stock(member, figures)
     if weight and figures.pull_horizontal > weight:
         found.append(
             Caution(
@@ -51,6 +50,20 @@ def cautions(member: Asked, figures: HangingFigures, wished: float, setting: Set
     if out_of_reach := _out_of_reach(member, figures, wished, setting):
         found.append(out_of_reach)
     return tuple(found)
+
+
+def _stock(member: Asked, figures: HangingFigures) -> list[Caution]:
+    """What the stock's own rows and certificates say."""
+    stock = member.stock
+    said = {"not for lifting": stock.scope, "stock to confirm": stock.confirm}
+    found = [Caution(code, member.mark, text, stock.source) for code, text in said.items() if text]
+    if not math.isnan(figures.capacity_used):
+        text = (
+            f"The greatest end pull is {100 * figures.capacity_used:.3g} % of the breaking load of {stock.name} that "
+            "the user certifies. No factor is applied: the design factor is the engineer's. " + stock.scope
+        )
+        found.append(Caution("use of capacity", member.mark, text.strip(), stock.source))
+    return found
 
 
 def _out_of_reach(member: Asked, figures: HangingFigures, wished: float, setting: Setting) -> Caution | None:

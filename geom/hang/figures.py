@@ -53,5 +53,6 @@ class HangingFigures:
     loads: tuple[object, ...]
     sag_per_length: float
     points: MetresArray
+    capacity_used: float = NAN  # greatest end pull over the breaking load, only where the user certifies one
     lowest_at: Metres = NAN  # plan distance of the lowest point from the `from` support
     sag_at: Metres = NAN  # plan distance of the greatest sag from the `from` support

@@ -36,7 +36,7 @@ from geom.result import (
     fixed,
 )
 from geom.setting.options import Setting
-from geom.setting.stock import Stock
+from geom.setting.stock import Stock, use_of_capacity
 from geom.shop.rounding import cut_length
 from geom.solids import Link, Links, Solid, Sweep, link_frames
 from geom.units import STANDARD_GRAVITY
@@ -194,9 +194,15 @@ def _figures(member: Asked, at: Mapping[str, Any], shape: Shape, setting: Settin
         loads=(),
         sag_per_length=float(at["sag_per_length"]),
         points=fixed(shape.curve.points(setting.drawing.within), -1, 3),
+        capacity_used=_capacity(member.stock, max(float(at["at_from"]), float(at["at_to"]))),
         lowest_at=float(at["lowest_at"]),
         sag_at=float(at["sag_at"]),
     )
+
+
+def _capacity(stock: Stock, pull: float) -> float:
+    share = use_of_capacity(stock, pull)
+    return NAN if share is None else share
 
 
 def _links(member: Asked, at: Mapping[str, Any]) -> LinksFigures:
