@@ -13,7 +13,7 @@ from geom.curves import Catenary, Segment
 from geom.design.reader import read
 from geom.net.figures import NetFigures
 from geom.result import Piece, Result
-from geom.solids import Bars, Links, Union
+from geom.solids import Balls, Bars, Links, Union
 from geom.solve import solve
 
 GRAVITY = 9.80665  # m/s2, 3rd CGPM, 1901
@@ -420,3 +420,13 @@ def test_demos_of_nets_hang_in_balance(path: Path) -> None:
     for piece in nets:
         assert piece.figures.residual < 1e-8
         assert piece.figures.depth > 0.05
+
+
+def test_ball_chain_is_a_ball_for_each_count() -> None:
+    beads = '[stock.beads]\nkind = "beads"\npitch = 6\ndiameter = 4\nmass_per_metre = "0.05 kg/m"'
+    piece = net_of(design(before=beads, stock='"beads"', force_density='{ field = "1 N/m" }'))
+    (solid,) = piece.solids
+    assert isinstance(solid.body, Union)
+    balls = [body for body in solid.body.bodies if isinstance(body, Balls)]
+    assert [len(body.places) for body in balls] == list(piece.figures.members.links)
+    assert solid.volume == pytest.approx(sum(piece.figures.members.links) * np.pi / 6 * 0.004**3, rel=1e-9)

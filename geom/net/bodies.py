@@ -15,11 +15,11 @@ from geom.net.making import Made
 from geom.net.network import Flags, Floats
 from geom.net.shape import NetShape
 from geom.setting.stock import Stock
-from geom.solids import Bars, Body, Link, Links, Solid, Union
+from geom.solids import Balls, Bars, Body, Link, Links, Places, Solid, Union
 
 
 def solids(asked: AskedNet, shape: NetShape, made: Made, within: float) -> tuple[Solid, ...]:
-    """Return the net as one solid; none where a stock has no size.
+    """Return the net as one solid, of what has a size.
 
     Links stand in their made number evenly along the length found: whole links step in length, and the net is not
     solved again with them.
@@ -27,8 +27,11 @@ def solids(asked: AskedNet, shape: NetShape, made: Made, within: float) -> tuple
     bodies: list[Body] = []
     for number, stock in enumerate(asked.stocks):
         of = asked.stock_of == number
-        if stock.counted and stock.wire and stock.width and stock.pitch:
-            bodies += _chains(Link(stock.wire, stock.pitch, stock.width), asked, shape, made.count, of)
+        if stock.kind == "chain" and stock.wire and stock.width and stock.pitch:
+            link = Link(stock.wire, stock.pitch, stock.width)
+            bodies += (Links(*frames, link) for frames in _frames(asked, shape, made.count, of))
+        elif stock.kind == "beads" and stock.diameter:
+            bodies += (Balls(places, stock.diameter / 2) for places, _ in _frames(asked, shape, made.count, of))
         elif stock.diameter:
             bodies.append(_tubes(stock, asked, shape, of, within))
     if not bodies:
@@ -50,8 +53,8 @@ def parameters(asked: AskedNet, shape: NetShape) -> Floats:
     return result
 
 
-def _chains(link: Link, asked: AskedNet, shape: NetShape, count: NDArray[np.int64], of: Flags) -> Iterator[Links]:
-    """Yield the links of each member of one stock, all placed in one pass."""
+def _frames(asked: AskedNet, shape: NetShape, count: NDArray[np.int64], of: Flags) -> Iterator[Places]:
+    """Yield centres and turns of the links of each member of one stock, all placed in one pass."""
     chosen = np.flatnonzero(of)
     joints = count[chosen] + 1
     member = np.repeat(chosen, joints)
@@ -65,7 +68,7 @@ def _chains(link: Link, asked: AskedNet, shape: NetShape, count: NDArray[np.int6
     turns = _turns(x, _sides(shape, member[1:][inner]), number[:-1][inner])
     bounds = np.concatenate([[0], np.cumsum(count[chosen])])
     for start, stop in pairwise(bounds.tolist()):
-        yield Links(places[start:stop], turns[start:stop], link)
+        yield Places(places[start:stop], turns[start:stop])
 
 
 def _at(asked: AskedNet, shape: NetShape, member: NDArray[np.intp], share: Floats) -> Floats:

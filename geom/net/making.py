@@ -44,17 +44,12 @@ def made(asked: AskedNet, shape: NetShape, step: float) -> Made:
     for number, stock in enumerate(asked.stocks):
         of = asked.stock_of == number
         if stock.counted and stock.pitch:
-            count[of] = np.maximum(1, _count(shape.length[of], stock.pitch))
+            count[of] = links.count(shape.length[of], stock.pitch)
             pins[of] = cut[of] = count[of] * stock.pitch
         else:
             cut[of] = cut_length(shape.length[of], step=step)
     per_metre = np.array([stock.mass_per_metre for stock in asked.stocks])[asked.stock_of]
     return Made(count, pins, cut, per_metre * cut)
-
-
-def _count(length: Floats, pitch: float) -> NDArray[np.int64]:
-    each = np.full(len(length), pitch)
-    return links.count(length, each, rounding=np.full(len(length), "nearest"), parity=np.full(len(length), "any"))
 
 
 def cuts(asked: AskedNet, made: Made) -> tuple[Cut, ...]:
