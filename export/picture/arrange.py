@@ -82,11 +82,11 @@ def _rows(panels: Sequence[Panel], width: float, sizes: Sizes) -> Iterator[_Row]
     for panel in panels:
         placed = _beside(row, panel, sizes)
         if row and placed.at[0] + placed.box[2] > width:
-            yield _levelled(row, sizes)
+            yield _Row(levelled(row))
             row, placed = [], _beside([], panel, sizes)
         row.append(placed)
     if row:
-        yield _levelled(row, sizes)
+        yield _Row(levelled(row))
 
 
 def _beside(row: Sequence[Panel], panel: Panel, sizes: Sizes) -> Panel:
@@ -100,11 +100,11 @@ def _beside(row: Sequence[Panel], panel: Panel, sizes: Sizes) -> Panel:
     return replace(panel, at=(x, -panel.core[1]))
 
 
-def _levelled(row: Sequence[Panel], sizes: Sizes) -> _Row:
+def levelled(row: Sequence[Panel]) -> tuple[Panel, ...]:
     """Bring the titles of a row to one height."""
     tops = [panel.at[1] + max((line.box[3] for line in panel.titles), default=0.0) for panel in row]
     lowest = min(tops)
-    return _Row(tuple(lowered(panel, top - lowest) for panel, top in zip(row, tops, strict=True)))
+    return tuple(lowered(panel, top - lowest) for panel, top in zip(row, tops, strict=True))
 
 
 def _foot(plan: Panel | None, notes: Notes, width: float, sizes: Sizes) -> list[_Row]:
@@ -117,7 +117,7 @@ def _foot(plan: Panel | None, notes: Notes, width: float, sizes: Sizes) -> list[
     if x + plan.box[2] <= width:
         # feet level: the plan's title stands on the line of the last note
         return [_Row((stand_in, replace(plan, at=(x, -plan.box[1]))))]
-    return [_levelled([_beside([], plan, sizes)], sizes), _Row((stand_in,))]
+    return [_Row((_beside([], plan, sizes),)), _Row((stand_in,))]
 
 
 def _stacked(blocks: Sequence[_Row], sheet: Sheet, sizes: Sizes, *, feed: bool) -> tuple[list[_Row] | None, int]:

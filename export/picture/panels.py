@@ -129,7 +129,9 @@ def _symbols(subject: Subject, geometry: Box, print_: Print, drawn: Drawn) -> li
     for label, at in zip(subject.labels, flat_labels, strict=True):
         along = None if label.along is None else frame.flat(label.along[None] + frame.origin)[0]
         above = bool(at[1] >= middle - 1e-9)
-        wanted.append(_symbol(label, at, along, above=above, plan=is_plan(frame), print_=print_, drawn=drawn))
+        mark = _symbol(label, at, along, above=above, plan=is_plan(frame), print_=print_, drawn=drawn)
+        if label.text:
+            wanted.append(mark)
     lines = lines_of(subject.piece) if subject.view.lines is None else subject.view.lines
     for line in lines:
         if line.role in ("floor", "ground") and not is_plan(frame):

@@ -1,0 +1,140 @@
+"""The picture laid out anew for a screen: the sheet's text would be four pixels high there."""
+
+from collections.abc import Sequence
+from dataclasses import dataclass, replace
+
+import numpy as np
+
+from export.picture import plan as planning
+from export.picture.arrange import levelled
+from export.picture.dimensions import Measure
+from export.picture.panels import Print, Subject, elevation, subject
+from export.picture.sizes import Sizes
+from export.picture.values import Box, Panel, around, shifted
+from export.picture.views import Drawing, is_plan
+from export.picture.wording import Wording, listed
+from geom.result import Result
+
+# Sizes in pixels; text by its capitals, which are 1/1.37 of the font size at most: 12 px, 11 px, 19 px and 22 px fonts.
+SCREEN = Sizes(
+    note=8.8, small=8.1, title=14.0, heading=16.0, arrow=8.0, gap=4.0, first_row=26.0, row=22.0, overshoot=4.0,
+    symbol=13.0, leading=1.9,
+)  # fmt: skip
+WIDTH = 900.0
+MARGIN = 18.0
+_BETWEEN = 28.0
+_MOST_ABREAST = 3
+_MOST_PIECES = 12
+_HIGHEST = {1: 420.0, 2: 300.0, 3: 240.0}  # pixels of geometry, by how many stand abreast
+_WIDE, _WIDER = 2.2, 4.5  # width to height from which on a view stands with one other, or alone
+_TRIES = 6  # each takes off what printed things stand over the column
+_MOST_MARKS = 12  # of a view; a net's marks are for its drawing
+_FINE = 4000.0  # a curve is within its view's size over this: a quarter of a pixel
+
+
+@dataclass(frozen=True)
+class Screen:
+    """Everything on the screen, pixels, y up from the foot of the last line; `rest` names what is not drawn."""
+
+    panels: tuple[Panel, ...]
+    box: Box
+    rest: str
+
+
+def screen(result: Result) -> Screen:
+    """Return elevations, plan under them, for a screen: the first dozen pieces, three abreast at most."""
+    wording = Wording(result.setting.drawing_unit)
+    subjects = [_subject(result, number, wording) for number in range(min(len(result.pieces), _MOST_PIECES))]
+    abreast = _abreast(subjects)
+    column = (WIDTH - 2 * MARGIN - (abreast - 1) * _BETWEEN) / abreast
+    panels = [_fitted(one, column, _HIGHEST[abreast], wording) for one in subjects]
+    placed, y = _rows(panels, abreast, column)
+    if not (len(subjects) == 1 and is_plan(subjects[0].view.frame)):
+        plan = _plan(result, wording)
+        plan = replace(plan, at=(MARGIN - plan.box[0], y - _BETWEEN - plan.box[3]))
+        placed.append(plan)
+    rest = [piece.mark for piece in result.pieces[_MOST_PIECES:]]
+    box = around(*(shifted(panel.box, panel.at) for panel in placed))
+    return Screen(tuple(placed), box, f"and {listed(rest, 20)}" if rest else "")
+
+
+def _subject(result: Result, number: int, wording: Wording) -> Subject:
+    piece = result.pieces[number]
+    view = piece.views[0]
+    coarse = subject(piece, view, Drawing(1.0), wording).seen.box
+    within = max(coarse[2] - coarse[0], coarse[3] - coarse[1], 1e-6) / _FINE
+    full = subject(piece, view, Drawing(within), wording)
+    marks = full.labels if len(full.labels) <= _MOST_MARKS else tuple(replace(one, text="") for one in full.labels)
+    return replace(full, labels=marks, measures=tuple(_telling(full.measures)))
+
+
+def _telling(found: Sequence[Measure]) -> list[Measure]:
+    """The dimensions that tell the shape: the widest (span), the sag or rise, the lowest level."""
+    told: list[Measure] = []
+    level = [one for one in found if one.kind == "horizontal"]
+    told += [max(level, key=lambda one: one.value)] if level else []
+    upright = [one for one in found if one.kind == "vertical" and one.side == "inside"]
+    upright = upright or [one for one in found if one.kind == "vertical"]
+    told += [max(upright, key=lambda one: one.value)] if upright else []
+    levels = [one for one in found if one.kind == "level"]
+    told += [min(levels, key=lambda one: one.value)] if levels else []
+    return told
+
+
+def _abreast(subjects: Sequence[Subject]) -> int:
+    """How many stand abreast: as many as there are, up to three, fewer where they are wide."""
+    widest = max((_shape(one) for one in subjects), default=1.0)
+    fit = 1 if widest > _WIDER else 2 if widest > _WIDE else _MOST_ABREAST
+    return max(1, min(fit, len(subjects), _MOST_ABREAST))
+
+
+def _shape(one: Subject) -> float:
+    left, bottom, right, top = one.seen.box
+    return (right - left) / max(top - bottom, 1e-9)
+
+
+def _fitted(one: Subject, column: float, highest: float, wording: Wording) -> Panel:
+    """A view as large as its column and the height allow; what is printed beside the geometry is taken off."""
+    left, bottom, right, top = one.seen.box
+    size = np.maximum([right - left, top - bottom], 1e-9)
+    wide = column
+    for _ in range(_TRIES):
+        per = float(max(size[0] / max(wide, 60.0), size[1] / highest))
+        panel = elevation(one, Print(per, SCREEN, wording))
+        over = panel.box[2] - panel.box[0] - column
+        if over <= 0:
+            break
+        wide = min(wide, size[0] / per) - over
+    return panel
+
+
+def _rows(panels: Sequence[Panel], abreast: int, column: float) -> tuple[list[Panel], float]:
+    """Panels in their columns, rows downwards from 0; and where the last row ends."""
+    placed: list[Panel] = []
+    y = 0.0
+    for start in range(0, len(panels), abreast):
+        row = [
+            replace(panel, at=(MARGIN + number * (column + _BETWEEN) - panel.box[0], -panel.core[1]))
+            for number, panel in enumerate(panels[start : start + abreast])
+        ]
+        row = list(levelled(row))
+        box = around(*(shifted(panel.box, panel.at) for panel in row))
+        placed += [replace(panel, at=(panel.at[0], panel.at[1] + y - box[3])) for panel in row]
+        y -= box[3] - box[1] + _BETWEEN
+    return placed, y + _BETWEEN
+
+
+def _plan(result: Result, wording: Wording) -> Panel:
+    coarse = planning.site(result, Drawing(1.0))
+    box = around(*(one.box for one in coarse.seen))
+    size = np.maximum([box[2] - box[0], box[3] - box[1]], 1e-9)
+    site = planning.site(result, Drawing(float(size.max()) / _FINE))
+    wide = WIDTH - 2 * MARGIN
+    for _ in range(_TRIES):
+        per = float(max(size[0] / wide, size[1] / _HIGHEST[1]))
+        panel = planning.plan(site, Print(per, SCREEN, wording))
+        over = panel.box[2] - panel.box[0] - (WIDTH - 2 * MARGIN)
+        if over <= 0:
+            break
+        wide = min(wide, size[0] / per) - over
+    return panel
