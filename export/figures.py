@@ -6,7 +6,7 @@ Its keys are fixed by the dataclasses of `geom.result` and of each kind's figure
 from __future__ import annotations
 
 import json
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 
 from export import __version__
 from export.walk import Plain, plain, record
@@ -40,6 +40,11 @@ def document(result: Result, made_from: str, files: Sequence[Figures]) -> Figure
         "cautions": plain(result.cautions),
         "files": list(files),
     }
+
+
+def belongs(found: Mapping[str, object], made_from: str) -> bool:
+    """Return whether figures found on disk are of this very design, made by this version of the program."""
+    return found.get("version") == __version__ and found.get("design_sha256") == made_from
 
 
 def piece(entry: Piece) -> Figures:

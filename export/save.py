@@ -13,7 +13,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, field
 from pathlib import Path
 
-from export.figures import Figures, chunks, document
+from export.figures import Figures, belongs, chunks, document
 from export.folder import Folder, look
 from export.outputs import CheckFailed, Choices, File, Output
 from export.staging import CannotSave, Staging, hash_of, is_own_name
@@ -140,9 +140,7 @@ def _read_back(path: Path, digest: str) -> None:
 
 def _kept(order: Order, folder: Folder, made: Sequence[Figures]) -> list[Figures]:
     """Return the entries of files that an earlier run made of the same design by outputs left out now."""
-    new = document(order.result, order.made_from, ())
-    same = all(folder.figures.get(key) == new[key] for key in ("version", "design_sha256"))
-    if not order.partial or not same:
+    if not order.partial or not belongs(folder.figures, order.made_from):
         return []
     names = {str(entry["name"]).casefold() for entry in made}
     ran = {output.name for output in order.outputs}

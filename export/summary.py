@@ -81,7 +81,7 @@ def _piece(piece: Piece, unit: str) -> Iterator[str]:
     yield f"{piece.mark}: {piece.kind}, {piece.what}{copies}"
     standing = f" ({piece.cases[0].standing})" if piece.cases else ""
     figures = (
-        (name, f"{text}{standing}" if text.endswith(" N") else text) for name, text in _singles(piece.figures, unit)
+        (name, f"{text}{standing}" if name.startswith("pull") else text) for name, text in _singles(piece.figures, unit)
     )
     yield from _indented(_pairs([*_asked(piece, unit), *figures]))
     yield from _indented(_tables(piece.figures, unit))

@@ -328,6 +328,23 @@ def test_a_workbook_that_was_changed_does_not_pass(tmp_path: Path) -> None:
         tables.OUTPUT.verify(path, other, CHOICES)
 
 
+def test_a_sheet_of_many_columns_names_its_cells_as_the_format_does() -> None:
+    wide = Table("wide", tuple(Column(f"c{n}", Unit(""), f"c{n}", np.array([float(n)])) for n in range(800)))
+    book = workbook(with_tables(wide))
+    row = next(book["wide"].iter_rows(min_row=2, values_only=True))
+    assert row == ("A1", *range(800))
+    assert book["wide"].dimensions == "A1:ADU2"  # 801 columns: ADU = 1 * 676 + 4 * 26 + 21
+
+
+@pytest.mark.parametrize("text", ["a\x00b", "\x1b[2J", "\ufffe", "<&>\"'", " a ", "a\nb", "a\rb", "\ud7ff\U0001f517"])
+def test_text_that_xml_cannot_hold_leaves_a_file_that_reads_back(tmp_path: Path, text: str) -> None:
+    made = result(cuts=(cut("S1", stock=text),))
+    tables.OUTPUT.verify(on_disk(tables.OUTPUT, made, tmp_path), made, CHOICES)
+    found = workbook(made)["cuts"].cell(2, 3).value
+    assert isinstance(found, str)
+    assert len(found) == len(text)
+
+
 def test_text_longer_than_a_cell_can_hold_is_cut_and_says_so(tmp_path: Path) -> None:
     """32,767 characters is a cell's limit; the library leaves a longer text out without a word."""
     made = result(cuts=(cut("S1", stock="x" * 40_000),))
