@@ -118,11 +118,11 @@ def plan(
         If a length is not above zero, a count or the kerf under zero, or their numbers differ.
     """
     _check(lengths, counts, sold, kerf)
-    longest = max(sold, default=math.inf)
-    if too_long := tuple(place for place, length in enumerate(lengths) if length > longest and counts[place]):
-        return _impossible(too_long, f"{max(lengths):g} m", f"{longest:g} m")
     pieces, lost = [_whole(length) for length in lengths], _whole(kerf)
     reels = [Sold(_whole(length), _whole(length)) for length in sold]
+    if too_long := _too_long(pieces, counts, reels):
+        worst = max(lengths[place] for place in too_long)
+        return _impossible(too_long, f"{worst:g} m", f"{max(sold):g} m")
     if not sold:
         exact = _taken(pieces, counts, lost)
         reels = [Sold(exact, exact)]
@@ -168,9 +168,9 @@ def plan_links(
     """
     _check(links, counts, [*sold, pitch], lost)
     reels = [Sold(links_on(length, pitch), _whole(length)) for length in sold]
-    longest = max((reel.holds for reel in reels), default=math.inf)
-    if too_long := tuple(place for place, number in enumerate(links) if number > longest and counts[place]):
-        return _impossible(too_long, f"{max(links)} links", f"{longest} links")
+    if too_long := _too_long(links, counts, reels):
+        worst, most = max(links[place] for place in too_long), max(reel.holds for reel in reels)
+        return _impossible(too_long, f"{worst} links", f"{most} links")
     if not sold:
         exact = _taken(links, counts, lost)
         reels = [Sold(exact, _whole(exact * pitch + 2 * wire))]
@@ -205,10 +205,17 @@ def _check(lengths: Sequence[float], counts: Sequence[int], sold: Sequence[float
     if len(lengths) != len(counts):
         raise ValueError(f"{len(lengths)} lengths and {len(counts)} counts: give one count for each length")
     for length in (*lengths, *sold):
-        if not 0 < length < math.inf:
+        if not 1.0 / _PER_METRE <= length < math.inf:
             raise ValueError(f"a length of {length} cannot be cut; lengths are above zero")
     if any(count < 0 for count in counts) or not 0 <= kerf < math.inf:
         raise ValueError(f"counts {counts} and what a cut takes, {kerf}, are 0 or more")
+
+
+def _too_long(pieces: Sequence[int], counts: Sequence[int], reels: Sequence[Sold]) -> tuple[int, ...]:
+    """Return the places of wanted pieces that are longer than the longest reel."""
+    longest = max((reel.holds for reel in reels), default=math.inf)
+    wanted = enumerate(zip(pieces, counts, strict=True))
+    return tuple(place for place, (piece, count) in wanted if piece > longest and count)
 
 
 def _taken(pieces: Sequence[int], counts: Sequence[int], lost: int) -> int:
