@@ -341,6 +341,8 @@ def read(text: str, name: str) -> Reading:
         raw = tomllib.loads(text)
     except tomllib.TOMLDecodeError as error:
         return Reading(None, (syntax_problem(text, error),))
+    except (ValueError, RecursionError):  # a whole number of over 4,300 digits; brackets in brackets without end
+        return Reading(None, (Problem(1, "", "", "holds a number or a nesting that is too long; shorten it"),))
     reader = _Reader(raw, index(text))
     models = {entry.name: entry.model for entry in kinds().values()}
     reader.top_level(models)
