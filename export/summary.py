@@ -9,14 +9,10 @@ import math
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import is_dataclass
 
+from export.plaintext import aligned, indented, pairs, shown
 from export.walk import entries
-from geom import units
 from geom.result import Case, Caution, Piece, Quantity, Result, StockPlan, Support, Unit
 
-# What a shop can measure, and a little more; the figures file has every digit.
-_LENGTH_DECIMALS = {"mm": 1, "cm": 2, "m": 4, "in": 3}
-_DECIMALS = {"N": 1, "Nm": 1, "kg": 3, "deg": 2, "C": 1, "m2": 4, "m3": 5}
-_WORDS = {"deg": "°", "C": "°C", "m2": "m2", "m3": "m3", "N_per_m": "N/m", "kg_per_m3": "kg/m3", "per_K": "/K"}
 _MOST_ROWS = 12  # of a table within a piece, and of parts shown in full: about half a screen
 _MOST_LINES = 100  # of parts shown in one line each
 
@@ -43,39 +39,6 @@ def _caution(caution: Caution) -> str:
     return f"{piece}{caution.text}{f' ({caution.source})' if caution.source else ''}"
 
 
-def shown(value: object, unit: Unit, length_unit: str) -> str:
-    """Return one value as people read it: lengths in the design's unit, `-` where it has no meaning."""
-    match value:
-        case None:
-            return "-"
-        case bool():
-            return "yes" if value else "no"
-        case str():
-            return value
-        case int() | float():
-            return _number(float(value), unit, length_unit)
-    return ", ".join(shown(entry, unit, length_unit) for entry in value) if isinstance(value, Iterable) else str(value)
-
-
-def _number(value: float, unit: Unit, length_unit: str) -> str:
-    if not math.isfinite(value):
-        return "-"
-    if unit.suffix == "m":
-        if length_unit == "ft":
-            return units.feet_inches(value)
-        text = f"{value / units.UNITS[length_unit].metres:.{_LENGTH_DECIMALS[length_unit]}f}"
-        return f"{_tidy(text)} {length_unit}"
-    decimals = _DECIMALS.get(unit.suffix)
-    text = f"{value * unit.factor:.6g}" if decimals is None else _tidy(f"{value * unit.factor:.{decimals}f}")
-    return f"{text} {_WORDS.get(unit.suffix, unit.suffix)}".rstrip()
-
-
-def _tidy(text: str) -> str:
-    """Leave out noughts after the point, and the sign of nought."""
-    short = text.rstrip("0").rstrip(".") if "." in text else text
-    return "0" if short == "-0" else short
-
-
 def _piece(piece: Piece, unit: str) -> Iterator[str]:
     copies = f", {piece.copies} off" if piece.copies > 1 else ""
     yield f"{piece.mark}: {piece.kind}, {piece.what}{copies}"
@@ -83,10 +46,10 @@ def _piece(piece: Piece, unit: str) -> Iterator[str]:
     figures = (
         (name, f"{text}{standing}" if name.startswith("pull") else text) for name, text in _singles(piece.figures, unit)
     )
-    yield from _indented(_pairs([*_asked(piece, unit), *figures]))
-    yield from _indented(_tables(piece.figures, unit))
-    yield from _indented(_cases([("", case) for case in piece.cases or ()], unit))
-    yield from _indented(_parts(piece, unit))
+    yield from indented(pairs([*_asked(piece, unit), *figures]))
+    yield from indented(_tables(piece.figures, unit))
+    yield from indented(_cases([("", case) for case in piece.cases or ()], unit))
+    yield from indented(_parts(piece, unit))
 
 
 def _asked(piece: Piece, unit: str) -> Iterator[tuple[str, str]]:
@@ -118,7 +81,7 @@ def _tables(figures: object, unit: str, prefix: str = "") -> Iterator[str]:
             yield from _tables(value, unit, f"{prefix}{name}: ")
         elif isinstance(value, tuple) and 0 < len(value) <= _MOST_ROWS and is_dataclass(value[0]):
             yield f"{prefix}{name}"
-            yield from _indented(_aligned(_heads(value[0]), [_row(row, unit) for row in value]))
+            yield from indented(aligned(_heads(value[0]), [_row(row, unit) for row in value]))
 
 
 def _fields(figures: object) -> Iterator[tuple[str, Unit, object]]:
@@ -153,7 +116,7 @@ def _cases(cases: Sequence[tuple[str, Case]], unit: str) -> Iterator[str]:
         rows = [[mark, *_row(case, unit)[: len(heads) - 1]] for mark, case in cases]
         part = 0 if any(mark for mark, _ in cases) else 1
         yield "cases"
-        yield from _indented(_aligned(heads[part:], [row[part:] for row in rows]))
+        yield from indented(aligned(heads[part:], [row[part:] for row in rows]))
 
 
 def _parts(piece: Piece, unit: str) -> Iterator[str]:
@@ -164,7 +127,7 @@ def _parts(piece: Piece, unit: str) -> Iterator[str]:
     yield piece.parts_name
     heads = ["mark", *(fact.name for fact in shown_parts[0].facts)]
     rows = [[part.mark, *(shown(fact.value, fact.unit, unit) for fact in part.facts)] for part in shown_parts]
-    yield from _indented(_aligned(heads, [row for row in rows if len(row) == len(heads)]))
+    yield from indented(aligned(heads, [row for row in rows if len(row) == len(heads)]))
     if len(piece.parts) > _MOST_LINES:
         yield f"  and {len(piece.parts) - _MOST_LINES} more"
     yield from _cases([(part.mark, case) for part in shown_parts for case in part.cases or ()], unit)
@@ -172,7 +135,7 @@ def _parts(piece: Piece, unit: str) -> Iterator[str]:
     for part in shown_parts:
         tables.setdefault(tuple(_tables(part.figures, unit)), []).append(part.mark)
     for lines, marks in list(tables.items())[:_MOST_ROWS]:
-        yield from (lines and (", ".join(marks), *_indented(lines)))
+        yield from (lines and (", ".join(marks), *indented(lines)))
 
 
 def _supports(supports: Sequence[Support], unit: str) -> list[str]:
@@ -191,7 +154,7 @@ def _supports(supports: Sequence[Support], unit: str) -> list[str]:
         for case in support.by_case
     ]
     more = [f"and {len(supports) - _MOST_LINES} more"] if len(supports) > _MOST_LINES else []
-    return [*_aligned(heads, rows), *more] if rows else []
+    return [*aligned(heads, rows), *more] if rows else []
 
 
 def _stock(plan: StockPlan, unit: str) -> str:
@@ -206,22 +169,4 @@ def _section(title: str, lines: Sequence[str]) -> Iterator[str]:
     if lines:
         yield ""
         yield title
-        yield from _indented(lines)
-
-
-def _pairs(pairs: Iterable[tuple[str, str]]) -> list[str]:
-    found = list(pairs)
-    width = max((len(name) for name, _ in found), default=0)
-    return [f"{name:{width}}  {value}" for name, value in found]
-
-
-def _aligned(heads: Sequence[str], rows: Sequence[Sequence[str]]) -> list[str]:
-    """Return a table in plain text, two spaces between its columns."""
-    widths = [max(map(len, column)) for column in zip(heads, *rows, strict=True)]
-    return [
-        "  ".join(f"{cell:{width}}" for cell, width in zip(row, widths, strict=True)).rstrip() for row in (heads, *rows)
-    ]
-
-
-def _indented(lines: Iterable[str]) -> Iterator[str]:
-    return (f"  {line}" for line in lines)
+        yield from indented(lines)

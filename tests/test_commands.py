@@ -22,6 +22,7 @@ from click.testing import CliRunner, Result
 from export import __version__, staging
 from export.cli import cli
 from export.outputs import CheckFailed, outputs
+from export.plaintext import rounded
 from tests.killed import contents
 
 ROOT = Path(__file__).parents[1]
@@ -257,7 +258,7 @@ def test_a_within_that_is_no_length_over_nothing_is_refused(design: Path, within
         ["check", "--nope", "a.toml"],
         ["--nope"],
         ["check"],
-        ["stock", "a", "b"],
+        ["stock", "--nope"],
     ],
 )
 def test_wrong_arguments_are_one_line_and_exit_2(arguments: list[str]) -> None:
@@ -469,3 +470,41 @@ def test_the_real_program_killed_at_any_moment_is_mended_by_the_next_run(design:
             assert program("export", design, "--into", tmp_path / "out").returncode == 0
             assert contents_of(left) == whole
             assert [p.name for p in (tmp_path / "out").iterdir()] == ["court"]
+
+
+def test_stock_lists_sizes_masses_and_what_they_rest_on() -> None:
+    """DIN 763, size 8: pitch 52 mm, outside width 33.6 mm (4.2 d), 1.1 kg/m, as copies of its table have it."""
+    made = run("stock", "DIN", "763")
+    assert (made.exit_code, made.stderr) == (0, "")
+    text = made.stdout
+    head = next(line for line in lines(text) if line.strip().startswith("name"))
+    row = next(line for line in lines(text) if line.strip().startswith("DIN 763-8 "))
+    assert re.split(r" {2,}", head.strip())[:5] == ["name", "wire, mm", "pitch, mm", "width, mm", "mass, kg/m"]
+    assert re.split(r" {2,}", row.strip())[:5] == ["DIN 763-8", "8", "52", "33.6", "1.1"]
+    for said in ("source: DIN 763", "(copy of the standard)", "confirm: ", "Not for lifting"):
+        assert said in text
+    assert "DIN 766" not in text
+
+
+def test_stock_lists_materials_too_and_everything_without_a_text() -> None:
+    assert re.search(r"^  brick +1900 ", run("stock", "brick").stdout, re.MULTILINE)
+    everything = run("stock").stdout
+    for name in ("DIN 763-8", "7x19-5", "EN 818-2-18", "brick", "steel"):
+        assert re.search(rf"^  {re.escape(name)} ", everything, re.MULTILINE)
+
+
+def test_a_stock_that_is_not_known_is_one_line_and_exit_2() -> None:
+    made = run("stock", "DIM 763-8")
+    assert (made.exit_code, made.stdout) == (2, "")
+    assert lines(made.stderr) == ["there is no stock or material 'DIM 763-8'; did you mean 'DIN 763-8'?"]
+
+
+@pytest.mark.parametrize(
+    ("value", "decimals", "text"),
+    [
+        (1836.04, 1, "1836"), (0.0312, 1, "0.0312"), (-0.04, 0, "-0.04"), (12.25, 1, "12.2"), (0.0, 1, "0"),
+        (-0.0, 1, "0"), (1e-12, 3, "0"), (999.96, 1, "1000"), (float("nan"), 1, "-"), (float("inf"), 1, "-"),
+    ],
+)  # fmt: skip
+def test_numbers_are_shown_as_far_as_a_shop_can_use_them(value: float, decimals: int, text: str) -> None:
+    assert rounded(value, decimals) == text
