@@ -28,10 +28,11 @@ class Upright:
     half_weight: Floats  # (m,)
     load: Floats  # (n,)
 
-    def weigh(self, length: Floats) -> Floats:
-        """Return the load on the free nodes, weights of members of these lengths taken off."""
-        taken: Floats = self.system.carried @ (self.half_weight * length)
-        return self.load[self.system.network.free] - taken
+    def wanting(self, rise: Floats, length: Floats) -> Floats:
+        """Return what the free nodes lack to balance, for members of this rise and length, (m,) each."""
+        pulled: Floats = self.system.loose.T @ (self.density * rise)
+        weighed: Floats = self.system.carried @ (self.half_weight * length)
+        return self.load[self.system.network.free] - weighed - pulled
 
     def jacobian(self, rise: Floats, length: Floats) -> sparse.csc_array:
         """Return the derivative of the left side by z."""
@@ -56,16 +57,14 @@ def elevations(upright: Upright, factor: SuperLU | None, level: Floats) -> Float
 
 def _back_solved(upright: Upright, base: Floats, factor: SuperLU, extent: float) -> Floats:
     """Return z of the free nodes by back-solves with one factor; `base` (m,) is the anchors' part of C z."""
-    loose = upright.system.loose
-    held_pull = loose.T @ (upright.density * base)
-    z, change = factor.solve(upright.weigh(upright.s) - held_pull), np.inf
+    z, change = factor.solve(upright.wanting(base, upright.s)), np.inf
     for _ in range(_MOST_BACK_SOLVES):
-        last, before = z, change
-        z = factor.solve(upright.weigh(np.hypot(upright.s, loose @ z + base)) - held_pull)
-        change = float(np.abs(z - last).max())
+        rise, before = upright.system.loose @ z + base, change
+        step = factor.solve(upright.wanting(rise, np.hypot(upright.s, rise)))
+        z, change = z + step, float(np.abs(step).max())
         if change <= CLOSE * max(extent, float(np.abs(z).max())):
             return z
-        if change > _SLOW * before:
+        if not change <= _SLOW * before:
             break
     return _newton(upright, base, z, extent)
 
@@ -76,9 +75,9 @@ def _newton(upright: Upright, base: Floats, z: Floats, extent: float) -> Floats:
     for _ in range(_MOST_NEWTON):
         rise = loose @ z + base
         length = np.hypot(upright.s, rise)
-        wanting = upright.weigh(length) - loose.T @ (upright.density * rise)
         factor = factored(upright.jacobian(rise, length))
-        step = factor.solve(wanting) if factor is not None else wanting
+        assert factor is not None  # there are free nodes, or nothing is solved for
+        step = factor.solve(upright.wanting(rise, length))
         z = z + step
         change, size = float(np.abs(step).max()), max(extent, float(np.abs(z).max()))
         if change <= CLOSE * size:

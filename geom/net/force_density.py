@@ -31,12 +31,13 @@ In both models x and y do not depend on z, and what is left is one equation in t
 
     K z + (w/2) |C_f|' sqrt(s^2 + (C z)^2) = f_z,        s = S (straight) or S sinh(u)/u (hanging),
 
-solved by back-solves with the one factor of K, the lengths being those of the last z. Where that converges
-slowly (deep nets of heavy members) it is finished by Newton's method. For hanging members q u coth u > w/2,
-so the Jacobian is an M-matrix for every z, with entries bounded away from zero: there is exactly one
-solution, and since the equation is convex in z Newton's method falls to it monotonically from anywhere
-(Ortega and Rheinboldt, "Iterative Solution of Nonlinear Equations in Several Variables", 1970, ch. 13.3).
-For straight members of q < w/2 there may be none: a member cannot hold more than its density says.
+solved by back-solves of what the nodes lack to balance, with one factor of K (or of the matrix of x and y,
+where that is near). Where that converges slowly (deep nets of heavy members) it is finished by Newton's
+method. For hanging members q u coth u > w/2, so the Jacobian is an M-matrix for every z, with entries
+bounded away from zero: there is exactly one solution, and since the equation is convex in z Newton's method
+falls to it monotonically from anywhere (Ortega and Rheinboldt, "Iterative Solution of Nonlinear Equations
+in Several Variables", 1970, ch. 13.3). For straight members of q < w/2 there may be none: a member cannot
+hold more than its density says.
 """
 
 from __future__ import annotations
@@ -53,6 +54,7 @@ from geom.net.shape import NetShape
 from geom.net.system import System, factored, system_of
 
 _MOST_U = 100.0  # a member of u = 100 is 1e41 times as long as its plan distance: nothing anyone asks for
+_ALIKE = 0.05  # spread of u coth u up to which a second factorisation costs more than the back-solves it saves
 _BALANCED = 1e-6  # residual over the greatest force; rounding alone leaves under 1e-9 at 100,000 nodes
 
 
@@ -66,8 +68,8 @@ def solve(
 ) -> NetShape:
     """Return the net in equilibrium under force densities, its own weight and loads.
 
-    A hanging member comes out at least S sinh(u)/u long, u = w/(2 q): a density of half the weight per metre makes
-    it 1.18 times its plan distance, one of a tenth 14.8 times.
+    A hanging member comes out at least S sinh(u)/u long, u = w/(2 q): a density of half the weight per
+    metre makes it 1.18 times its plan distance, one of a tenth 14.8 times.
 
     Parameters
     ----------
@@ -124,12 +126,14 @@ def _upright(system: System, u: Floats, plan: Floats, factor: SuperLU | None) ->
     """Return the equation of the elevations, and the factor of its matrix."""
     ratio, s, half, load = u_coth(u), sinh_over(u) * plan, 0.5 * system.weight, system.loads[:, 2]
     on_free = ratio[~system.network.held[system.network.members].all(axis=1)]
-    if not on_free.size or np.ptp(on_free) == 0.0:
-        # One weight to density throughout: divided by u coth u, the matrix is that of x and y.
-        r = on_free[0] if on_free.size else 1.0
-        return Upright(system, system.density, s, half / r, load / r), factor
-    upward = system.density * ratio
-    return Upright(system, upward, s, half, load), factored(system.matrix(upward))
+    least, most = on_free.min(initial=np.inf), on_free.max(initial=1.0)
+    if most - least > _ALIKE * (most + least):
+        upward = system.density * ratio
+        return Upright(system, upward, s, half, load), factored(system.matrix(upward))
+    # Upward densities are the level ones times about r: divided by r, the matrix is nearly that of x and y. Each
+    # member's density is so near that a back-solve with its factor leaves (most - least)/(most + least) of an error.
+    r = 0.5 * (most + least) if on_free.size else 1.0
+    return Upright(system, system.density * (ratio / r), s, half / r, load / r), factor
 
 
 def _checked(shape: NetShape) -> NetShape:
