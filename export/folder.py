@@ -10,6 +10,7 @@ import json
 import os
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, field
+from functools import cached_property
 from pathlib import Path
 from typing import Any
 
@@ -44,7 +45,7 @@ class Folder:
         """Name of the figures file."""
         return f"{self.stem}-{FIGURES}"
 
-    @property
+    @cached_property
     def entries(self) -> dict[str, dict[str, Any]]:
         """What the figures say of each other file, by name."""
         return {entry["name"]: entry for entry in self.figures.get("files", ())}

@@ -117,9 +117,32 @@ def own_named(result: Result, name: str) -> Table | None:
     return next((table for table in own(result) if table.name == name), None)
 
 
+def design(result: Result) -> Table:
+    """Return what holds for all tables: title, where its coordinates count from, what its pulls include."""
+    x, y, z = result.setting.site.origin
+    said = {
+        "title": result.title,
+        "coordinates": f"count from x {x:.12g} m, y {y:.12g} m, z {z:.12g} m of the site",
+        "pulls": "dead load only, where a table does not say what else they include",
+    }
+    return Table("design", (_text("what", "what", said), _text("value", "value", said.values())))
+
+
+def with_origin(table: Table, result: Result) -> Table:
+    """Return a table of coordinates with the site coordinates that they count from, where a design has such."""
+    origin = result.setting.site.origin
+    if not any(origin):
+        return table
+    rows = length(table)
+    added = (
+        Column(f"origin_{c}", _METRES, f"from site {c}", np.full(rows, o)) for c, o in zip("xyz", origin, strict=True)
+    )
+    return Table(table.name, (*table.columns, *added), table.piece)
+
+
 def every(result: Result) -> list[Table]:
     """Return every table of a design that has a row."""
-    tables = (cuts(result), stock_plan(result), supports(result), *own(result), cautions(result))
+    tables = (design(result), cuts(result), stock_plan(result), supports(result), *own(result), cautions(result))
     return [table for table in tables if length(table)]
 
 

@@ -22,6 +22,7 @@ from export.grid import fields, harmless
 from export.outputs import CheckFailed, Choices, Output, outputs
 from geom import units
 from geom.result import Column, PatternCut, Result, StockPattern, StockPlan, Table, Unit
+from geom.setting.options import Site
 from tests.hand_made import cut, piece, result, table
 
 CHOICES = Choices()
@@ -186,6 +187,17 @@ def test_supports_have_a_row_for_each_case_with_what_it_includes() -> None:
     assert {row["cautions"] for row in found} == {"not for lifting"}
 
 
+def test_coordinates_come_with_the_site_coordinates_that_they_count_from() -> None:
+    made = with_tables(table("nodes", x=[1.0, 2.0]))
+    site = Site.model_validate({"origin": [437250, 112400, 12.5]})
+    moved = dataclasses.replace(made, setting=dataclasses.replace(made.setting, site=site))
+    for output in (nodes.OUTPUT, supports.OUTPUT):
+        assert "origin_x_mm" not in rows(output, made)[0]
+        origins = [(r["origin_x_mm"], r["origin_y_mm"], r["origin_z_mm"]) for r in rows(output, moved)]
+        assert origins == [("437250000", "112400000", "12500")] * 2
+    assert "count from x 437250 m, y 112400 m, z 12.5 m" in str(workbook(moved)["design"]["B3"].value)
+
+
 @pytest.mark.parametrize(
     ("output", "name"), [(setting_out.OUTPUT, "setting out"), (nodes.OUTPUT, "nodes"), (supports.OUTPUT, "")]
 )
@@ -273,7 +285,7 @@ def test_a_long_table_is_written_in_chunks() -> None:
 def test_the_workbook_has_every_table_as_a_sheet_with_numbers_as_numbers() -> None:
     first = piece("A1", tables=(table("blocks", width=[0.1, 0.2]),))
     book = workbook(result(pieces=(first, piece("A2"))))
-    assert book.sheetnames == ["cuts", "stock plan", "supports", "blocks", "cautions"]
+    assert book.sheetnames == ["design", "cuts", "stock plan", "supports", "blocks", "cautions"]
     head, *values = book["blocks"].iter_rows(values_only=True)
     assert head == ("piece", "width, mm")
     assert values == [("A1", 100), ("A1", 200)]
@@ -301,7 +313,7 @@ def test_sheets_have_names_that_are_allowed_and_different() -> None:
     names = ["a[b]:c*d?e/f\\g", "A B  C D E F G", "x" * 40, "x" * 50, "''", "Cuts"]
     book = workbook(with_tables(*(table(name, x=[1.0]) for name in names)))
     found = book.sheetnames
-    assert len({name.casefold() for name in found}) == len(found) == len(names) + 4
+    assert len({name.casefold() for name in found}) == len(found) == len(names) + 5
     assert all(0 < len(name) <= 31 and not set(name) & set("[]:*?/\\") for name in found)
 
 

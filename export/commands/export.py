@@ -27,7 +27,12 @@ _FIGURES = "figures"  # always written, by save itself
 @click.option(
     "--into", required=True, type=click.Path(path_type=Path, file_okay=False), metavar="DIR", help="Where to write."
 )
-@click.option("--only", multiple=True, metavar="WORD,...", help="Write only these files (and the figures).")
+@click.option(
+    "--only",
+    multiple=True,
+    metavar="WORD,...",
+    help="Write only these files, by the word in their names (cuts,drawing), and the figures.",
+)
 @click.option("--verify", is_flag=True, help="Read every written file back in full.")
 @click.option("--real-links", is_flag=True, help="Make solids of real links, however many there are.")
 def export(  # noqa: D103, PLR0913, PLR0917 - click hands over each option as a parameter; the help is the module's
