@@ -1,5 +1,7 @@
 """Standard stock found by name, and listed."""
 
+from functools import cache, lru_cache
+
 from geom.errors import near, say
 from geom.setting.stock.chains import chains
 from geom.setting.stock.record import Stock
@@ -8,7 +10,11 @@ from geom.setting.stock.table import key
 
 __all__ = ["find", "find_base", "known", "suggestion"]
 
+# No name in the tables is longer than 40; beyond this none is looked for.
+_LONGEST = 80
 
+
+@lru_cache(maxsize=256)
 def find_base(name: str) -> Stock:
     """Return a standard's stock by name, even one that cannot be used as it stands.
 
@@ -31,10 +37,6 @@ def find_base(name: str) -> Stock:
     return found
 
 
-# No name in the tables is longer than 40; beyond this none is looked for.
-_LONGEST = 80
-
-
 def find(name: str) -> Stock:
     """Return a standard's stock by name, ready to be used.
 
@@ -49,15 +51,29 @@ def find(name: str) -> Stock:
     return found
 
 
+@lru_cache(maxsize=256)  # a name misspelt is misspelt in every piece of a design
 def suggestion(name: str, own: tuple[str, ...] = ()) -> str:
-    """Return the nearest name among the design's own and the tables', or where to look."""
+    """Return the sizes of the standard it names, the nearest of the design's own and the tables, or where to look."""
+    asked = key(name[:_LONGEST].rpartition("-")[0])
+    same = [s.name.rpartition("-") for s in _plain() if asked and key(s.name.rpartition("-")[0]) == asked]
+    if same:
+        sizes = [size for _, _, size in same]
+        unit = "" if sizes[0].endswith("in") else " mm"
+        return f"; {same[0][0]} is listed in {', '.join(sizes[:-1])} and {sizes[-1]}{unit}"
     names = [*own, *dict.fromkeys(stock.name for stock in _listed())]
     return near(name, names) or '; `sagwright stock` lists the known ones, "DIN 763-8" or "7x19-5"; or add your own'
 
 
-def _listed() -> list[Stock]:
+def _plain() -> list[Stock]:
+    """Return the chains of the tables in their own metal, which alone have a stiffness."""
+    return [stock for stock in dict.fromkeys(chains().values()) if stock.EA is not None]
+
+
+@cache
+def _listed() -> tuple[Stock, ...]:
+    """Return every chain, and the ropes of the usual diameters."""
     ropes = [entry.stock(size) for entry in classes().values() for size in entry.sizes or (40.0,)]
-    return [*dict.fromkeys(chains().values()), *ropes]
+    return (*dict.fromkeys(chains().values()), *ropes)
 
 
 def known(text: str = "") -> list[Stock]:
