@@ -126,9 +126,12 @@ def test_a_folder_stands_for_the_designs_in_it(design: Path, tmp_path: Path) -> 
     for name in ("also.TOML", ".hidden.toml", "notes.txt"):
         (tmp_path / name).write_text(GOOD, encoding="utf-8")
     (tmp_path / "deeper.toml").mkdir()
-    made = run("export", tmp_path, design, "--into", tmp_path / "out", "--quiet")
+    (tmp_path / "linked.toml").symlink_to(design)
+    made = run(
+        "export", tmp_path, tmp_path / "deeper.toml" / ".." / "court.toml", "--into", tmp_path / "out", "--quiet"
+    )
     assert made.exit_code == 0
-    assert sorted(p.name for p in (tmp_path / "out").iterdir()) == ["also", "court"]
+    assert sorted(p.name for p in (tmp_path / "out").iterdir()) == ["also", "court", "linked"]
 
 
 @pytest.mark.parametrize(

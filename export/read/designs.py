@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import os
 from collections.abc import Sequence
 from dataclasses import dataclass
 from pathlib import Path
@@ -29,7 +30,7 @@ class Found:
 
 def find(arguments: Sequence[Path]) -> Found:
     """Return the design files that arguments mean; a folder stands for those directly in it, in order of name."""
-    paths: dict[Path, Path] = {}
+    paths: dict[str, Path] = {}
     problems: list[str] = []
     for argument in arguments:
         meant = _meant(argument)
@@ -37,7 +38,7 @@ def find(arguments: Sequence[Path]) -> Found:
             problems.append(meant)
         else:
             for path in meant:
-                paths.setdefault(path.resolve(), path)
+                paths.setdefault(os.path.abspath(path), path)
     return Found(tuple(paths.values()), tuple(problems))
 
 
