@@ -7,7 +7,9 @@ it, and R12 has no such variable, so every file says its unit in a note as well.
 from __future__ import annotations
 
 import io
+import logging
 from collections.abc import Iterator, Mapping
+from contextlib import contextmanager
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
@@ -57,7 +59,8 @@ def new(fmt: Format, layers: Mapping[str, Look]) -> Drawing:
     """Return an empty document with the layers, line types and styles of drawings."""
     from ezdxf.filemanagement import new as new_document
 
-    doc = new_document(fmt.version, setup=False)
+    with _quietly(fmt):
+        doc = new_document(fmt.version, setup=False)
     if not fmt.old:
         doc.header["$INSUNITS"] = units.UNITS[fmt.unit].insunits
         doc.header["$MEASUREMENT"] = int(fmt.unit in _METRIC)
@@ -70,6 +73,18 @@ def new(fmt: Format, layers: Mapping[str, Look]) -> Drawing:
     doc.header["$TEXTSTYLE"] = TEXT_STYLE
     _dimension_style(doc, fmt)
     return doc
+
+
+@contextmanager
+def _quietly(fmt: Format) -> Iterator[None]:
+    """Keep the library from saying on stderr that R12 has no unit: our notes say it."""
+    logger = logging.getLogger("ezdxf")
+    before = logger.level
+    logger.setLevel(logging.ERROR if fmt.old else before)
+    try:
+        yield
+    finally:
+        logger.setLevel(before)
 
 
 def _line_types(doc: Drawing, fmt: Format, layers: Mapping[str, Look]) -> None:

@@ -90,6 +90,10 @@ class Pen:
 
     def _line(self, points: Sequence[Pair], look: Look, *, closed: bool, bulges: Floats | None = None) -> None:
         values = self._attributes(look)
+        if bulges is None:
+            points = _without_repeats(points, closed=closed)
+        if len(points) < 2:
+            return
         if len(points) == 2 and bulges is None:
             self.layout.add_line(points[0], points[1], values)
         elif self.fmt.old:
@@ -118,6 +122,12 @@ class Pen:
     @cached_property
     def _known(self) -> dict[Look, dict[str, object]]:
         return {}
+
+
+def _without_repeats(points: Sequence[Pair], *, closed: bool) -> Sequence[Pair]:
+    """Points of which no two running are the same once they are rounded."""
+    kept = [point for number, point in enumerate(points) if not number or point != points[number - 1]]
+    return kept[:-1] if closed and len(kept) > 1 and kept[0] == kept[-1] else kept
 
 
 def _five(points: Sequence[Pair], bulges: Floats | None) -> Floats:

@@ -50,22 +50,61 @@ class _Row:
 def arrange(views: Sequence[Panel], foot: Foot, sheet: Sheet, sizes: Sizes, *, feed: bool = False) -> Arranged | None:
     """Return views, plan and notes in place on a sheet, or None where they do not fit it.
 
-    With `feed` as many sheets are taken as it takes, one under another; then None only where one view is larger than
-    one.
+    Rows take the sheet's whole width; where that leaves no height for the notes, the last rows and the plan stand to
+    the right of these. With `feed` as many sheets are taken as it takes, one under another; then None only where one
+    view is larger than one.
     """
-    blocks = [*_rows(views, sheet.width, sizes), *_foot(foot.plan, foot.notes, sheet.width, sizes)]
+    rows = list(_rows(views, sheet.width, sizes))
+    if any(row.box[2] - row.box[0] > sheet.width for row in rows):
+        return None
+    beside = sheet.width - (foot.notes.box[2] - foot.notes.box[0]) - sizes.apart
+    options = [rows] if feed else [rows[:whole] for whole in range(len(rows), -1, -1)]
+    for whole in options:
+        rest = views[sum(len(row.panels) for row in whole) :]
+        for narrow in (sheet.width, beside) if not rest else (beside,):
+            arranged = _arranged(whole, rest, foot, (sheet, narrow), sizes, feed=feed)
+            if arranged is not None:
+                return arranged
+    return None
+
+
+def _arranged(
+    whole: Sequence[_Row], rest: Sequence[Panel], foot: Foot, room: tuple[Sheet, float], sizes: Sizes, *, feed: bool
+) -> Arranged | None:
+    """Rows over the whole width, then the notes with what is left beside them, or with the plan over them."""
+    sheet, narrow = room
+    blocks = [*whole]
     if foot.heading is not None:
         blocks.insert(0, _Row((replace(foot.heading, at=(-foot.heading.box[0], -foot.heading.box[1])),)))
+    left, bottom, _, _ = foot.notes.box
+    stand_in = Panel("", "notes", 1.0, (), core=foot.notes.box, box=foot.notes.box, at=(-left, -bottom))
+    last = [*rest, *([] if foot.plan is None else [foot.plan])]
+    rows = list(_rows(last, narrow, sizes))
+    if narrow < sheet.width and rows:
+        blocks.append(_with_notes(rows, stand_in, sheet.width - narrow, sizes))
+    else:
+        blocks += [*rows, _Row((stand_in,))]
     if any(block.box[2] - block.box[0] > sheet.width for block in blocks):
         return None
     placed, sheets = _stacked(blocks, sheet, sizes, feed=feed)
-    if placed is None:
-        return None
-    panels = tuple(panel for row in placed for panel in row.panels if panel.kind != "notes")
-    at = next(panel.at for row in placed for panel in row.panels if panel.kind == "notes")
-    written = replace(foot.notes, at=at)
-    box = around(*(shifted(panel.box, panel.at) for panel in panels), shifted(written.box, at))
-    return Arranged(panels, written, box, sheets)
+    return None if placed is None else _read(placed, foot, sheets)
+
+
+def _with_notes(rows: Sequence[_Row], notes: Panel, left: float, sizes: Sizes) -> _Row:
+    """One row of the notes and, to their right, rows of views; both stand on the foot."""
+    placed, _ = _stacked(rows, None, sizes, feed=False)
+    assert placed is not None  # without a sheet there is no end to the room
+    foot = min(row.box[1] for row in placed)
+    right = [replace(panel, at=(panel.at[0] + left, panel.at[1] - foot)) for row in placed for panel in row.panels]
+    return _Row((notes, *right))
+
+
+def _read(placed: Sequence[_Row], foot: Foot, sheets: int) -> Arranged:
+    panels = [panel for row in placed for panel in row.panels]
+    views = tuple(panel for panel in panels if panel.kind != "notes")
+    notes = replace(foot.notes, at=next(panel.at for panel in panels if panel.kind == "notes"))
+    box = around(*(shifted(panel.box, panel.at) for panel in views), shifted(notes.box, notes.at))
+    return Arranged(views, notes, box, sheets)
 
 
 _TEXT = ("heading", "notes")  # kinds that are text alone; the notes have a stand-in among the panels
@@ -107,21 +146,11 @@ def levelled(row: Sequence[Panel]) -> tuple[Panel, ...]:
     return tuple(lowered(panel, top - lowest) for panel, top in zip(row, tops, strict=True))
 
 
-def _foot(plan: Panel | None, notes: Notes, width: float, sizes: Sizes) -> list[_Row]:
-    """Notes to the left, the plan to their right where it fits, else over them."""
-    left, bottom, right, _ = notes.box
-    stand_in = Panel("", "notes", 1.0, (), core=notes.box, box=notes.box, at=(-left, -bottom))
-    if plan is None:
-        return [_Row((stand_in,))]
-    x = right - left + sizes.apart - plan.box[0]
-    if x + plan.box[2] <= width:
-        # feet level: the plan's title stands on the line of the last note
-        return [_Row((stand_in, replace(plan, at=(x, -plan.box[1]))))]
-    return [_Row((_beside([], plan, sizes),)), _Row((stand_in,))]
+def _stacked(blocks: Sequence[_Row], sheet: Sheet | None, sizes: Sizes, *, feed: bool) -> tuple[list[_Row] | None, int]:
+    """Rows one under another, downwards from 0; a row that does not fit any more begins a new sheet, with `feed`.
 
-
-def _stacked(blocks: Sequence[_Row], sheet: Sheet, sizes: Sizes, *, feed: bool) -> tuple[list[_Row] | None, int]:
-    """Rows one under another, downwards from 0; a row that does not fit any more begins a new sheet, with `feed`."""
+    Without a sheet there is no end to the room.
+    """
     placed: list[_Row] = []
     sheets, top, last = 1, 0.0, None
     for row in blocks:
@@ -130,7 +159,7 @@ def _stacked(blocks: Sequence[_Row], sheet: Sheet, sizes: Sizes, *, feed: bool) 
             by_box = last.box[1] - _BETWEEN * sizes.note - row.box[3]
             by_core = last.core[1] - _least_apart(last, row, sizes) - row.core[3]
             y = min(by_box, by_core)
-        if y + row.box[1] < top - sheet.height:
+        if sheet is not None and y + row.box[1] < top - sheet.height:
             if not feed or row.box[3] - row.box[1] > sheet.height:
                 return None, sheets
             top -= sheet.height + _FEED * sizes.note

@@ -37,6 +37,16 @@ class Measure:
     rank: int
     text: str
 
+    @property
+    def extent(self) -> float:
+        """How long its dimension line is, m; of a level, which has none, without end."""
+        step = np.abs(self.q - self.p)
+        if self.kind == "level":
+            return np.inf
+        if self.kind in ("horizontal", "vertical"):
+            return float(step[0 if self.kind == "horizontal" else 1])
+        return float(np.hypot(*step))
+
     def in_rows(self, per: float, core: Box, sizes: Sizes) -> bool:
         """Whether it stands in rows outside the figure, not at what it measures."""
         if self.kind == "vertical" and self.side in ("left", "right"):
@@ -57,6 +67,8 @@ def measures(dimensions: Iterable[Dimension], frame: Frame, wording: Wording) ->
         if not np.isfinite(dimension.value):
             continue
         measure = _measure(dimension, frame, wording)
+        if measure.extent < _SAME:
+            continue
         found.setdefault(_key(measure), measure)
     return list(found.values())
 

@@ -5,7 +5,7 @@ from dataclasses import dataclass, field
 import numpy as np
 from numpy.typing import NDArray
 
-from export.picture.values import Box, Floats
+from export.picture.values import Box, Floats, Text
 
 HEAVY = 1  # lines of the thing itself
 LIGHT = 2  # dimension and extension lines, chords, leaders
@@ -47,19 +47,32 @@ class Ground:
         """Enter all cells a box with corners (4, 2) lies on."""
         self.points(self._spread(corners), bits)
 
-    def free(self, corners: Floats, bits: int = ANY, margin: float = 0.0) -> bool:
-        """Return whether a box with corners (4, 2) in turn, and a margin, is inside and touches none of `bits`."""
-        if margin:
-            corners = grown(corners, margin)
+    def free(self, box: Box, bits: int = ANY, margin: float = 0.0) -> bool:
+        """Return whether an upright box, and a margin round it, is inside and touches none of `bits`."""
+        left, bottom, right, top = self.box
+        x0, y0, x1, y1 = box[0] - margin, box[1] - margin, box[2] + margin, box[3] + margin
+        if x0 < left or y0 < bottom or x1 > right or y1 > top:
+            return False
+        cell = self.cell
+        rows = slice(int((y0 - bottom) / cell), int((y1 - bottom) / cell) + 1)
+        columns = slice(int((x0 - left) / cell), int((x1 - left) / cell) + 1)
+        found = self.cells[rows, columns]
+        return not (found.any() if bits == ANY else (found & bits).any())
+
+    def free_turned(self, corners: Floats, bits: int = ANY, margin: float = 0.0) -> bool:
+        """Return the same of a box with corners (4, 2) in turn, at any angle."""
+        corners = grown(corners, margin)
         low, high = corners.min(axis=0), corners.max(axis=0)
         left, bottom, right, top = self.box
         if low[0] < left or low[1] < bottom or high[0] > right or high[1] > top:
             return False
-        if corners[0, 1] == corners[1, 1]:  # upright: a slice of the grid
-            c0, r0 = ((low - (left, bottom)) / self.cell).astype(np.int64)
-            c1, r1 = ((high - (left, bottom)) / self.cell).astype(np.int64)
-            return not (self.cells[r0 : r1 + 1, c0 : c1 + 1] & bits).any()
         return not self.meets(self._spread(corners), bits)
+
+    def room_for(self, text: Text, margin: float) -> bool:
+        """Return whether a text, and a margin round it, touches nothing."""
+        if text.angle == 0:
+            return self.free(text.box, ANY, margin)
+        return self.free_turned(text.corners, ANY, margin)
 
     def meets(self, points: Floats, bits: int) -> bool:
         """Return whether any of points (n, 2) lies on a cell with any of `bits`."""

@@ -9,7 +9,7 @@ from export.picture.dimensions import Measure, oblique, placed
 from export.picture.ground import ANY, HEAVY, LIGHT, TEXT, Ground
 from export.picture.looks import LOOKS
 from export.picture.sizes import Sizes
-from export.picture.values import Floats, Path, Placed, Text, xy
+from export.picture.values import Floats, Path, Placed, Text, corners_of, xy
 
 _LOOK = LOOKS["dimension"]
 _SLIDES = (0.0, 0.15, -0.15, 0.3, -0.3)  # of the text's middle along the line, in its length
@@ -142,12 +142,12 @@ def _with_text(
     if measure.kind == "level":
         return _level(measure, end, ground, sizes)
     for text in _texts(measure.text, start, end, sizes):
-        if ground.free(text.corners, ANY, 0.35 * sizes.gap):
+        if ground.room_for(text, 0.35 * sizes.gap):
             ground.area(text.corners, TEXT)
             return _done(measure, line, text, paths)
     middle = (start + end) / 2
     for text, tip in _led_texts(measure.text, middle, sizes):
-        if ground.free(text.corners, ANY, 0.35 * sizes.gap) and not ground.crosses(middle, tip, TEXT):
+        if ground.room_for(text, 0.35 * sizes.gap) and not ground.crosses(middle, tip, TEXT):
             leader = np.stack([middle, tip])
             ground.area(text.corners, TEXT)
             ground.lines(leader, LIGHT)
@@ -162,16 +162,16 @@ def _level(measure: Measure, at: Floats, ground: Ground, sizes: Sizes) -> Placed
         for lean in _LEANS:
             foot = at + np.array([lean, -drop]) * sizes.note
             for before in _BEFORE:
-                line = np.array([foot - xy(before * wide, 0.0), foot + xy((1 - before) * wide, 0.0)])
-                box = np.concatenate([line, line[::-1] + xy(0.0, sizes.note + 0.6 * sizes.gap)])
+                left = float(foot[0]) - before * wide
+                box = (left, float(foot[1]), left + wide, float(foot[1]) + sizes.note + 0.6 * sizes.gap)
                 if ground.free(box, ANY, 0.35 * sizes.gap) and not ground.crosses(
                     at + (foot - at) * 0.3, foot, HEAVY | TEXT
                 ):
-                    ground.area(box, TEXT)
+                    ground.area(corners_of(box), TEXT)
                     # a leader from above ends over the text, not across it
-                    end = box[2:].mean(axis=0) * (0, 1) + foot * (1, 0) if drop > 0 and 0 < before < 1 else foot
+                    end = xy(foot[0], box[3]) if drop > 0 and 0 < before < 1 else foot
                     ground.lines(np.stack([at, end]), LIGHT)
-                    return _level_drawn(measure, (at, end), line, sizes)
+                    return _level_drawn(measure, (at, end), corners_of(box)[:2], sizes)
     return None
 
 

@@ -5,7 +5,7 @@ before leaders are drawn, and a mark there is no room for is left to the tables.
 time.
 """
 
-from collections.abc import Callable, Iterable, Iterator, Sequence
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field
 
 import numpy as np
@@ -104,7 +104,7 @@ def _triangle(wide: float, height: float) -> tuple[float, float]:
 def _beside(tag: _Tag, ground: Ground, sizes: Sizes, marks: Marks) -> bool:
     """Place a mark at the first free of the places beside its point."""
     return any(
-        ground.free(_corners(tag, middle, angle), ANY, 0.4 * sizes.gap) and _enter(tag, middle, angle, ground, marks)
+        _free(tag, middle, angle, ground, 0.4 * sizes.gap) and _enter(tag, middle, angle, ground, marks)
         for middle, angle in _places(tag, sizes)
     )
 
@@ -150,8 +150,7 @@ def _with_leader(tag: _Tag, ground: Ground, sizes: Sizes, marks: Marks) -> bool:
     """Place a mark further off with a leader; the leader crosses no text, and no heavy line if that can be had."""
     for bits in (HEAVY | TEXT, TEXT):
         for middle, start, end in _leaders(tag, sizes):
-            corners = _corners(tag, middle, 0.0)
-            if ground.free(corners, ANY, 0.4 * sizes.gap) and not ground.crosses(start, end, bits):
+            if _free(tag, middle, 0.0, ground, 0.4 * sizes.gap) and not ground.crosses(start, end, bits):
                 marks.paths.append(Path(LOOKS["leader"], np.stack([tag.wanted.at, end])))
                 ground.lines(np.stack([tag.wanted.at, end]), LIGHT)
                 return _enter(tag, middle, 0.0, ground, marks)
@@ -169,6 +168,13 @@ def _leaders(tag: _Tag, sizes: Sizes) -> Iterator[tuple[Floats, Floats, Floats]]
             middle = at + way * reach + np.array([np.sign(way[0]) * wide, np.sign(way[1]) * high])
             end = middle - np.array([np.sign(way[0]) * (wide + 0.5 * sizes.gap), 0.0])
             yield middle, at + way * (tag.wanted.clear + 1.5 * sizes.gap), end
+
+
+def _free(tag: _Tag, middle: Floats, angle: float, ground: Ground, margin: float) -> bool:
+    if angle:
+        return ground.free_turned(_corners(tag, middle, angle), ANY, margin)
+    (x, y), (wide, high) = middle, tag.half
+    return ground.free((float(x) - wide, float(y) - high, float(x) + wide, float(y) + high), ANY, margin)
 
 
 def _corners(tag: _Tag, middle: Floats, angle: float) -> Floats:
@@ -193,13 +199,3 @@ def _enter(tag: _Tag, middle: Floats, angle: float, ground: Ground, marks: Marks
         outline = middle + np.array([[-wide, -high], [wide, -high], [0, high]])
         marks.paths.append(Path(LOOKS["mark"], outline, closed=True))
     return True
-
-
-def first_free(
-    options: Iterable[Text], ground: Ground, sizes: Sizes, also: Callable[[Text], bool] = lambda _text: True
-) -> Text | None:
-    """Return the first of several places for a text that is free and that `also` allows."""
-    for option in options:
-        if ground.free(option.corners, ANY, 0.4 * sizes.gap) and also(option):
-            return option
-    return None

@@ -16,6 +16,7 @@ from export.picture.wording import Wording
 from geom.result import Result
 
 _SMALLEST = 25.0  # printed mm: once all geometry is smaller, a smaller scale makes no more room for its text
+_MORE_SHEETS = 1.5  # times the fewest sheets possible: so much a larger scale may cost
 _TITLE_ROOM = 12.0  # at least this much stands under each view, mm: mark and two lines
 _NOTES_WIDTH = 120.0  # of the notes' column, mm
 
@@ -53,19 +54,33 @@ def picture(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> P
     """Return the picture of a result on the sheet its design names.
 
     The scale is the largest at which everything fits one sheet. Where no scale brings that about, as the text of many
-    pieces takes more than a sheet whatever the scale, it is the largest at which each view fits one, on as many as it
-    takes.
+    pieces takes more than a sheet whatever the scale, it is the largest at which that takes hardly more sheets than any
+    scale does.
     """
     found = contents(result, drawing, extra=extra)
     on = sheet(result.setting.drawing.sheet)
-    for scale in _candidates(found):
-        arranged = _fitted(found, scale, on)
+    candidates = list(_candidates(found))
+    for scale in candidates:
+        arranged = _unmarked(found, scale, on) and _marked(found, scale, on)
         if arranged is not None:
             return _picture(arranged, scale, on)
-    for scale in scales(found.wording.unit):
-        arranged = _fitted(found, scale, on, feed=True)
-        if arranged is not None:
-            return _picture(arranged, scale, on)
+    return _on_sheets(found, candidates, on)
+
+
+def _on_sheets(found: Contents, candidates: Sequence[Scale], on: Sheet) -> Picture:
+    """The picture on several sheets: scales are tried upwards from the smallest, as long as few sheets are added."""
+    upwards = list(reversed(candidates)) or [list(scales(found.wording.unit))[-1]]
+    fewest, fitting = 0, []
+    for scale in upwards:
+        arranged = _unmarked(found, scale, on, feed=True)
+        fewest = fewest or (arranged.sheets if arranged else 0)
+        if arranged is None or arranged.sheets > _MORE_SHEETS * fewest:
+            break
+        fitting.append(scale)
+    for scale in reversed(fitting):
+        marked = _marked(found, scale, on, feed=True)
+        if marked is not None:
+            return _picture(marked, scale, on)
     raise AssertionError("the smallest scale brings any view onto a sheet")
 
 
@@ -77,16 +92,22 @@ def _candidates(found: Contents) -> Iterator[Scale]:
         yield scale
 
 
-def _fitted(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged | None:
-    """Everything in place at a scale, if it fits: first by bare geometry, then without marks, then with them."""
+def _unmarked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged | None:
+    """Everything but the marks in place at a scale, if it fits: first tried with no more than the geometry."""
     print_ = Print(scale.ratio / 1000, PAPER, found.wording)
     heading = noting.heading(found.words, PAPER, width=on.width)
     notes = noting.notes(found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH)
     if arrange(_bare(found, print_), Foot(heading, None, notes), on, PAPER, feed=feed) is None:
         return None
     views, plan = _panels(found, print_, marks=False)
-    if arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed) is None:
-        return None
+    return arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed)
+
+
+def _marked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged | None:
+    """Everything in place at a scale, if it fits."""
+    print_ = Print(scale.ratio / 1000, PAPER, found.wording)
+    heading = noting.heading(found.words, PAPER, width=on.width)
+    notes = noting.notes(found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH)
     views, plan = _panels(found, print_, marks=True)
     arranged = arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed)
     if arranged is None:

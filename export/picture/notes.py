@@ -80,8 +80,8 @@ def _pulls(result: Result) -> Iterator[str]:
 def _origin(result: Result) -> Iterator[str]:
     origin = result.setting.site.origin
     if any(origin):
-        said = ", ".join(Wording(result.unit).length(float(value)) for value in origin)
-        yield f"Site origin {said} {result.unit} is taken off every point"
+        said = ", ".join(Wording(result.unit).length_with_unit(float(value)) for value in origin)
+        yield f"Site origin {said} is taken off every point"
 
 
 def _cautions(result: Result) -> tuple[list[str], dict[str, tuple[int, ...]]]:

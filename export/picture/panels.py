@@ -25,6 +25,7 @@ from export.picture.values import (
     Text,
     around,
     box_of,
+    corners_of,
     xy,
 )
 from export.picture.views import Drawing, Seen, is_plan, lines_of, seen
@@ -33,6 +34,7 @@ from geom.result import Label, Piece, View
 
 _CELL = 0.2  # of the grid, in heights of the notes' text: half a millimetre on paper
 _MARGIN = 14.0  # round a view where marks may still stand, in the same
+_END = 1e-4  # m: a line that ends within this of a support is held there
 _FEW = 40  # marks of a view that are placed before the dimensions inside it
 _MOST_CELLS = 4e6  # of one grid: a sheet of A0 at half a millimetre
 
@@ -124,12 +126,11 @@ def _symbols(subject: Subject, geometry: Box, print_: Print, drawn: Drawn) -> li
     """Draw the symbols of a view's labels and of its ground, and return the marks to be placed beside them."""
     frame, sizes, per = subject.view.frame, print_.sizes, print_.per
     flat_labels = frame.flat(np.array([label.at for label in subject.labels]).reshape(-1, 3)) / per
-    middle = (geometry[1] + geometry[3]) / 2
+    above = _held_from_above(subject, flat_labels * per, (geometry[1] + geometry[3]) / 2 * per)
     wanted = []
-    for label, at in zip(subject.labels, flat_labels, strict=True):
+    for label, at, over in zip(subject.labels, flat_labels, above, strict=True):
         along = None if label.along is None else frame.flat(label.along[None] + frame.origin)[0]
-        above = bool(at[1] >= middle - 1e-9)
-        mark = _symbol(label, at, along, above=above, plan=is_plan(frame), print_=print_, drawn=drawn)
+        mark = _symbol(label, at, along, above=over, plan=is_plan(frame), print_=print_, drawn=drawn)
         if label.text:
             wanted.append(mark)
     lines = lines_of(subject.piece) if subject.view.lines is None else subject.view.lines
@@ -138,6 +139,29 @@ def _symbols(subject: Subject, geometry: Box, print_: Print, drawn: Drawn) -> li
             points = frame.flat(line.curve.points(per))
             drawn.paths += symbols.ground_hatching(points / per, sizes)
     return wanted
+
+
+def _held_from_above(subject: Subject, places: Floats, middle: float) -> list[bool]:
+    """Whether what is at each place (n, 2) m runs down from it, so that its support stands over it.
+
+    Told by the lines that end there; where none does, by which half of the view it is in.
+    """
+    ends = [
+        (stroke.points[first], stroke.points[second])
+        for stroke in subject.seen.strokes
+        if stroke.look.heavy or stroke.look.layer == "AXIS"
+        for first, second in ((0, 1), (-1, -2))
+    ]
+    if not ends:
+        return [bool(place[1] >= middle) for place in places]
+    tips, nexts = np.array([end[0] for end in ends]), np.array([end[1] for end in ends])
+    steps = nexts - tips
+    falls = steps[:, 1] / np.maximum(np.hypot(steps[:, 0], steps[:, 1]), 1e-12)
+    found = []
+    for place in places:
+        here = np.abs(tips - place).max(axis=1) < _END
+        found.append(bool(falls[here].sum() < 0 if here.any() else place[1] >= middle))
+    return found
 
 
 def _symbol(  # noqa: PLR0913 - what a symbol depends on
@@ -249,9 +273,3 @@ def enter(ground: Ground, shown: Seen, drawn: Drawn, per: float) -> None:
 def _enter_paths(ground: Ground, paths: Iterable[Path]) -> None:
     for path in paths:
         ground.lines(path.points, HEAVY if path.look.heavy else LIGHT, closed=path.closed)
-
-
-def corners_of(box: Box) -> Floats:
-    """Return the corners (4, 2) of an upright box."""
-    left, bottom, right, top = box
-    return np.array([[left, bottom], [right, bottom], [right, top], [left, top]])

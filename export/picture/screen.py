@@ -45,17 +45,17 @@ def screen(result: Result) -> Screen:
     """Return elevations, plan under them, for a screen: the first dozen pieces, three abreast at most."""
     wording = Wording(result.setting.drawing_unit)
     subjects = [_subject(result, number, wording) for number in range(min(len(result.pieces), _MOST_PIECES))]
-    abreast = _abreast(subjects)
-    column = (WIDTH - 2 * MARGIN - (abreast - 1) * _BETWEEN) / abreast
-    panels = [_fitted(one, column, _HIGHEST[abreast], wording) for one in subjects]
-    placed, y = _rows(panels, abreast, column)
+    placed: list[Panel] = []
+    y = 0.0
+    for row in _shared(subjects):
+        panels, y = _row(row, y, wording)
+        placed += panels
     if not (len(subjects) == 1 and is_plan(subjects[0].view.frame)):
         plan = _plan(result, wording)
-        plan = replace(plan, at=(MARGIN - plan.box[0], y - _BETWEEN - plan.box[3]))
-        placed.append(plan)
+        placed.append(replace(plan, at=(MARGIN - plan.box[0], y - plan.box[3])))
     rest = [piece.mark for piece in result.pieces[_MOST_PIECES:]]
     box = around(*(shifted(panel.box, panel.at) for panel in placed))
-    return Screen(tuple(placed), box, f"and {listed(rest, 20)}" if rest else "")
+    return Screen(tuple(placed), box, listed(rest, 20))
 
 
 def _subject(result: Result, number: int, wording: Wording) -> Subject:
@@ -81,11 +81,24 @@ def _telling(found: Sequence[Measure]) -> list[Measure]:
     return told
 
 
-def _abreast(subjects: Sequence[Subject]) -> int:
-    """How many stand abreast: as many as there are, up to three, fewer where they are wide."""
-    widest = max((_shape(one) for one in subjects), default=1.0)
-    fit = 1 if widest > _WIDER else 2 if widest > _WIDE else _MOST_ABREAST
-    return max(1, min(fit, len(subjects), _MOST_ABREAST))
+def _shared(subjects: Sequence[Subject]) -> list[list[Subject]]:
+    """Rows of views in order: wide ones alone, somewhat wide ones in pairs, others three abreast."""
+    rows: list[list[Subject]] = []
+    free = 0.0
+    for one in subjects:
+        share = 1 / _most_abreast(one, len(subjects))
+        if share > free + 1e-9:
+            rows.append([])
+            free = 1.0
+        rows[-1].append(one)
+        free -= share
+    return rows
+
+
+def _most_abreast(one: Subject, count: int) -> int:
+    shape = _shape(one)
+    fit = 1 if shape > _WIDER else 2 if shape > _WIDE else _MOST_ABREAST
+    return max(1, min(fit, count))
 
 
 def _shape(one: Subject) -> float:
@@ -108,20 +121,17 @@ def _fitted(one: Subject, column: float, highest: float, wording: Wording) -> Pa
     return panel
 
 
-def _rows(panels: Sequence[Panel], abreast: int, column: float) -> tuple[list[Panel], float]:
-    """Panels in their columns, rows downwards from 0; and where the last row ends."""
-    placed: list[Panel] = []
-    y = 0.0
-    for start in range(0, len(panels), abreast):
-        row = [
-            replace(panel, at=(MARGIN + number * (column + _BETWEEN) - panel.box[0], -panel.core[1]))
-            for number, panel in enumerate(panels[start : start + abreast])
-        ]
-        row = list(levelled(row))
-        box = around(*(shifted(panel.box, panel.at) for panel in row))
-        placed += [replace(panel, at=(panel.at[0], panel.at[1] + y - box[3])) for panel in row]
-        y -= box[3] - box[1] + _BETWEEN
-    return placed, y + _BETWEEN
+def _row(row: Sequence[Subject], y: float, wording: Wording) -> tuple[list[Panel], float]:
+    """One row from `y` down, its columns of one width; and where the next one begins."""
+    column = (WIDTH - 2 * MARGIN - (len(row) - 1) * _BETWEEN) / len(row)
+    panels = [_fitted(one, column, _HIGHEST[len(row)], wording) for one in row]
+    lefts = [MARGIN + number * (column + _BETWEEN) for number in range(len(row))]
+    level = levelled(
+        [replace(panel, at=(left - panel.box[0], -panel.core[1])) for panel, left in zip(panels, lefts, strict=True)]
+    )
+    box = around(*(shifted(panel.box, panel.at) for panel in level))
+    placed = [replace(panel, at=(panel.at[0], panel.at[1] + y - box[3])) for panel in level]
+    return placed, y - (box[3] - box[1]) - _BETWEEN
 
 
 def _plan(result: Result, wording: Wording) -> Panel:

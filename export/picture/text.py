@@ -8,6 +8,7 @@ measured here holds the text whichever of them a reader finds.
 
 import math
 from collections.abc import Iterable
+from functools import lru_cache
 
 WIDTHS = {
     character: width
@@ -40,6 +41,7 @@ EM = 1.37  # font size over cap height of DejaVu Sans; of Liberation Sans 1.45, 
 DESCENT = 0.33  # how far g and y reach under the line, in cap heights, the deeper of the two fonts
 
 
+@lru_cache(maxsize=65536)
 def width(text: str) -> float:
     """Return the width of a line of text in cap heights."""
     return sum(WIDTHS.get(character, WIDEST) for character in text)

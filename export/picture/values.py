@@ -109,7 +109,11 @@ class Text:
     @property
     def box(self) -> Box:
         """Upright box round it."""
-        return box_of(self.corners)
+        if self.angle:
+            return box_of(self.corners)
+        (x, y), wide = self.at, self.width
+        x -= {"left": 0.0, "centre": 0.5, "right": 1.0}[self.anchor] * wide
+        return (x, y, x + wide, y + self.height)
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -227,3 +231,9 @@ def around(*boxes: Box) -> Box:
 def shifted(box: Box, by: tuple[float, float]) -> Box:
     """Return a box moved."""
     return (box[0] + by[0], box[1] + by[1], box[2] + by[0], box[3] + by[1])
+
+
+def corners_of(box: Box) -> Floats:
+    """Return the corners (4, 2) of an upright box."""
+    left, bottom, right, top = box
+    return np.array([[left, bottom], [right, bottom], [right, top], [left, top]])
