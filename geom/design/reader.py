@@ -30,9 +30,11 @@ SECTIONS: dict[str, type[Section]] = {"shop": Shop, "site": Site, "drawing": Dra
 NAMED: dict[str, type[Section]] = {
     "support": SupportEntry,
     "fitting": FittingEntry,
-    "stock": StockEntry,
     "material": MaterialEntry,
+    "stock": StockEntry,
 }
+"""In the order in which they are read: a stock may be of a material of the design's own."""
+
 MOST_PIECES = 100_000
 
 S = TypeVar("S", bound=Section)
@@ -164,7 +166,8 @@ class _Reader:
             if not isinstance(raw, dict):
                 self.add((table,), f"[{table}]", "", f"is {say(raw)}, not tables; write [{table}.NAME]")
                 raw = {}
-            result[table] = {name: self._entry(table, model, name, entry, known) for name, entry in raw.items()}
+            so_far = Known(known.unit, known.origin, dict(result))
+            result[table] = {name: self._entry(table, model, name, entry, so_far) for name, entry in raw.items()}
         return result
 
     def _entry(self, table: str, model: type[Section], name: str, raw: Any, known: Known) -> Any:  # noqa: ANN401
