@@ -25,7 +25,8 @@ _ROOM = 1 - 1 / _FINE  # and what is measured at them may be so much of the tole
 _LEAST_SAMPLES = 65  # so that dk/ds is told from differences to some per cent even on a short stretch
 _MOST_TURN = np.pi / 2  # of one biarc: an arc of a drawing is split under a half turn, and the law is for short steps
 _FLAT = 1e-12  # a bulge under this has its sagitta lost in the rounding of its chord: a straight line
-_ROUNDS = 40  # the number of steps grows by a tenth each round at least, 45 times in all
+_SPUR = 1.02  # over what the law asks for where a step is too long, so that rounds end
+_ROUNDS = 60  # steps that are too long grow shorter by 2 % a round at least: to a third in all
 
 
 @dataclass(frozen=True, eq=False)
@@ -102,18 +103,28 @@ def _fit(curve: Curve, frame: Frame, within: float) -> Arcs:
         return _at(curve, frame, np.linspace(0.0, curve.length, 2 + int(abs(curve.sweep) / _MOST_TURN)))
     samples = _samples(curve, within / _FINE)
     points, angles = _followed(curve, frame, samples)
-    effort = _effort(samples, angles, within)
-    count = max(1, int(np.ceil(effort[-1])))
+    density = _density(samples, angles, within)
     for _ in range(_ROUNDS):
-        nodes = np.interp(np.linspace(0.0, effort[-1], count + 1), effort, samples)
-        nodes[-1] = curve.length
+        nodes = _nodes(samples, density)
         arcs = _at(curve, frame, nodes)
-        off = _off(arcs, points, np.clip(np.searchsorted(nodes, samples, side="right") - 1, 0, count - 1))
-        if off <= _ROOM * within:
+        biarc = np.clip(np.searchsorted(nodes, samples, side="right") - 1, 0, len(nodes) - 2)
+        off = np.zeros(len(nodes) - 1)
+        np.maximum.at(off, biarc, _off(arcs, points, biarc))
+        if off.max() <= _ROOM * within:
             return arcs
-        # the error falls by the third power of the number of steps
-        count = max(count + 1, int(np.ceil(count * min(2.0, max(1.1, (off / within) ** (1 / 3))))))
-    raise SolveError(f"tangent arcs come no nearer than {off:.3g} m to the curve; {within:.3g} m was asked for")
+        # where dk/ds changes within a step, as at a vertex, the law falls short: steps there are made shorter by it
+        more = np.cbrt(np.maximum(1.0, off / (_ROOM * within))) * np.where(off > _ROOM * within, _SPUR, 1.0)
+        density = density * more[biarc[:-1]]
+    raise SolveError(f"tangent arcs come no nearer than {off.max():.3g} m to the curve; {within:.3g} m was asked for")
+
+
+def _nodes(samples: Floats, density: Floats) -> Floats:
+    """Arc lengths of the biarcs' ends, so that each takes the same share of the density's integral."""
+    effort = np.concatenate([[0.0], np.cumsum(density * np.diff(samples))])
+    count = max(1, int(np.ceil(effort[-1])))
+    nodes = np.interp(np.linspace(0.0, effort[-1], count + 1), effort, samples)
+    nodes[-1] = samples[-1]
+    return np.asarray(nodes)
 
 
 def _samples(curve: Curve, within: float) -> Floats:
@@ -131,16 +142,14 @@ def _followed(curve: Curve, frame: Frame, samples: Floats) -> tuple[Floats, Floa
     return frame.flat(points), np.unwrap(np.arctan2(ways[:, 1], ways[:, 0]))
 
 
-def _effort(samples: Floats, angles: Floats, within: float) -> Floats:
-    """How many biarcs it takes from the start to each sample, (n,): the integral of 1/h."""
-    steps = np.diff(samples)
-    curvature = np.diff(angles) / steps
+def _density(samples: Floats, angles: Floats, within: float) -> Floats:
+    """How many biarcs a metre takes between each two samples, (n - 1,): 1/h of the law."""
+    curvature = np.diff(angles) / np.diff(samples)
     middles = (samples[1:] + samples[:-1]) / 2
     change = np.abs(np.gradient(curvature, middles))
     density = np.maximum(np.cbrt(change / (_ERROR * within)), np.abs(curvature) / _MOST_TURN)
     # a floor for straight stretches, where the sum would stand still and could not be inverted
-    density = np.maximum(density, 1e-3 / (samples[-1] - samples[0]))
-    return np.concatenate([[0.0], np.cumsum(density * steps)])
+    return np.asarray(np.maximum(density, 1e-3 / (samples[-1] - samples[0])))
 
 
 def _at(curve: Curve, frame: Frame, nodes: Floats) -> Arcs:
@@ -149,8 +158,8 @@ def _at(curve: Curve, frame: Frame, nodes: Floats) -> Arcs:
     return biarcs(frame.flat(points), ways)
 
 
-def _off(arcs: Arcs, points: Floats, biarc: NDArray[np.int64]) -> float:
-    """Greatest distance of points (n, 2) from the biarc each belongs to, m.
+def _off(arcs: Arcs, points: Floats, biarc: NDArray[np.int64]) -> Floats:
+    """Distances (n,) of points (n, 2) from the biarc each belongs to, m.
 
     With u from the middle of the biarc, where both its arcs run along t with normal n, and k the curvature of one of
     them, f = n u - k u u / 2 is 0 on its circle and the distance is 2 f / (1 + sqrt(1 - 2 k f)), also for k = 0.
@@ -167,7 +176,7 @@ def _off(arcs: Arcs, points: Floats, biarc: NDArray[np.int64]) -> float:
     bend = curvature[2 * biarc + second]
     side = along[:, 0] * from_middle[:, 1] - along[:, 1] * from_middle[:, 0]
     f = side - bend * _dot(from_middle, from_middle) / 2
-    return float(np.abs(2 * f / (1 + np.sqrt(np.maximum(0.0, 1 - 2 * bend * f)))).max())
+    return np.asarray(np.abs(2 * f / (1 + np.sqrt(np.maximum(0.0, 1 - 2 * bend * f)))))
 
 
 def _bulges(tangents: Floats, chords: Floats) -> Floats:
