@@ -511,3 +511,18 @@ def test_a_stock_that_is_not_known_is_one_line_and_exit_2() -> None:
 )  # fmt: skip
 def test_numbers_are_shown_as_far_as_a_shop_can_use_them(value: float, decimals: int, text: str) -> None:
     assert rounded(value, decimals) == text
+
+
+def test_the_same_design_gives_the_same_bytes_whatever_the_day_the_place_and_the_hash_seed(
+    design: Path, tmp_path: Path
+) -> None:
+    found = []
+    for seed, zone in (("1", "UTC-9"), ("2", "UTC+9")):
+        into = tmp_path / seed
+        environment = {**os.environ, "PYTHONHASHSEED": seed, "TZ": zone}
+        assert program("export", design, "--into", into, env=environment).returncode == 0
+        found.append(contents_of(into / "court"))
+    first, second = found
+    assert set(first) == set(second)
+    assert [name for name in first if first[name] != second[name]] == []
+    assert len(first) >= 5
