@@ -80,8 +80,8 @@ def significant(value: float, figures: int = 3) -> str:
     """Return a number to so many figures, without exponent and without a fraction nobody asked for."""
     if value == 0 or not math.isfinite(value):
         return f"{value:g}"
-    decimals = max(0, figures - 1 - math.floor(math.log10(abs(value) * (1 + 1e-12))))
-    return f"{value:.{min(decimals, 9)}f}"
+    power = int(f"{value:.{figures - 1}e}".partition("e")[2])  # of the rounded value: 999.6 is 1.00e+03
+    return f"{value:.{max(0, figures - 1 - power)}f}"
 
 
 def said_pulls(name: str) -> bool:

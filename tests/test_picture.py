@@ -1,0 +1,399 @@
+"""The picture drawing and preview share: nothing over anything else, all on its sheet, figures as they are."""
+
+import math
+from collections.abc import Iterator
+from functools import cache
+from typing import Any
+
+import numpy as np
+import pytest
+import shapely
+from hypothesis import given, settings
+from hypothesis import strategies as st
+
+from export.dxf.links import outlines
+from export.picture import labels, looks, scale, text
+from export.picture.dimensions import measures, outside
+from export.picture.ground import ANY, HEAVY, Ground
+from export.picture.labels import Wanted
+from export.picture.make import picture
+from export.picture.screen import WIDTH, screen
+from export.picture.sizes import PAPER
+from export.picture.values import Panel, Picture, Text, around, shifted
+from export.picture.views import Drawing, tidy
+from export.picture.wording import Wording, force, significant
+from geom.result import Dimension, Frame, Quantity, Unit, fixed
+from tests.designs import NET, RUN, SWAGS, in_unit, many, solved
+
+WITHIN = 0.0005
+DESIGNS = {
+    "swags": SWAGS, "run": RUN, "net": NET, "swags in feet": in_unit(SWAGS, "ft"), "run in inches": in_unit(RUN, "in"),
+    "swags on A4": in_unit(SWAGS, "m", sheet='"A4"'), "net on A1": in_unit(NET, "mm", sheet='"A1"'), "many": many(20),
+}  # fmt: skip
+
+
+@cache
+def drawn(name: str) -> Picture:
+    return picture(solved(DESIGNS[name]), Drawing(WITHIN))
+
+
+def texts(panel: Panel) -> Iterator[tuple[Text, shapely.Polygon]]:
+    """Every text of a panel with its box on the print."""
+    found = [*(one for group in panel.groups for one in group.texts), *panel.titles]
+    found += [placed.text for placed in panel.dimensions]
+    for one in found:
+        yield one, shapely.Polygon(one.corners + panel.at)
+
+
+def all_texts(shown: Picture) -> list[tuple[str, shapely.Polygon]]:
+    found = [(one.text, box) for panel in shown.panels for one, box in texts(panel)]
+    return found + [(one.text, shapely.Polygon(one.corners + shown.notes.at)) for one in shown.notes.texts]
+
+
+def heavy_lines(panel: Panel) -> list[shapely.LineString]:
+    """Lines of the thing itself on the print: strokes, symbols, outlines of links."""
+    lines = []
+    for group in panel.groups:
+        lines += [s.points / panel.per for s in group.strokes if s.look.heavy]
+        lines += [path.points for path in group.paths if path.look.heavy]
+        for row in group.links:
+            half = np.array([(row.pitch + 2 * row.wire) / 2, 0.0]) / panel.per
+            for place, angle in zip(row.places / panel.per, row.angles, strict=True):
+                turn = np.array([[np.cos(angle), np.sin(angle)], [-np.sin(angle), np.cos(angle)]])
+                lines.append(place + np.stack([-half, half]) @ turn)
+    return [shapely.LineString(line + panel.at) for line in lines]
+
+
+@pytest.mark.parametrize("name", DESIGNS)
+def test_no_two_texts_overlap(name: str) -> None:
+    boxes = all_texts(drawn(name))
+    tree = shapely.STRtree([box for _, box in boxes])
+    for number, (said, box) in enumerate(boxes):
+        for other in tree.query(box):
+            if other > number:
+                overlap = box.intersection(boxes[other][1]).area
+                assert overlap < 1e-6, f"{said!r} lies on {boxes[other][0]!r}"
+
+
+@pytest.mark.parametrize("name", DESIGNS)
+def test_no_text_lies_across_a_heavy_line(name: str) -> None:
+    for panel in drawn(name).panels:
+        tree = shapely.STRtree(heavy_lines(panel))
+        for one, box in texts(panel):
+            assert not len(tree.query(box, predicate="intersects")), one.text
+
+
+@pytest.mark.parametrize("name", DESIGNS)
+def test_everything_is_within_the_sheet_at_the_chosen_scale(name: str) -> None:
+    shown = drawn(name)
+    if shown.sheets == 1:
+        wide, high = shown.room
+        assert shown.box[2] - shown.box[0] <= wide + 1e-9
+        assert shown.box[3] - shown.box[1] <= high + 1e-9
+    whole = shapely.box(*shown.box).buffer(1e-6)
+    assert all(whole.contains(box) for _, box in all_texts(shown))
+    for panel in shown.panels:
+        for group in panel.groups:
+            for stroke in group.strokes:
+                assert whole.contains(shapely.MultiPoint(stroke.points / panel.per + panel.at))
+
+
+@pytest.mark.parametrize("name", DESIGNS)
+def test_no_panel_lies_on_another_and_pieces_stand_fifteen_heights_or_a_tenth_apart(name: str) -> None:
+    shown = drawn(name)
+    panels = [panel for panel in shown.panels if panel.kind != "heading"]
+    boxes = [shapely.box(*shifted(panel.box, panel.at)) for panel in panels]
+    cores = [shapely.box(*shifted(panel.core, panel.at)) for panel in panels]
+    for one in range(len(panels)):
+        for other in range(one):
+            assert boxes[one].intersection(boxes[other]).area == 0
+            sides = [s for p in (panels[one], panels[other]) for s in (p.core[2] - p.core[0], p.core[3] - p.core[1])]
+            least = max(15 * PAPER.note, max(sides) / 10)
+            assert cores[one].distance(cores[other]) >= least - 1e-6
+
+
+@pytest.mark.parametrize("name", DESIGNS)
+def test_a_dimension_says_and_measures_its_figure(name: str) -> None:
+    wording = Wording(solved(DESIGNS[name]).setting.drawing_unit)
+    found = [placed for panel in drawn(name).panels for placed in panel.dimensions]
+    assert found
+    for placed in found:
+        said = wording.length(placed.value)
+        assert placed.text.text == (f"{said} {placed.says}" if placed.says else said)
+        assert placed.measured == pytest.approx(placed.value, rel=1e-9, abs=1e-9)
+
+
+def test_the_scale_is_the_largest_of_the_series_that_fits() -> None:
+    # 7.2 m of bollards: 720 mm at 1:10, wider than the 390 mm of an A3, 360 mm at 1:20
+    assert drawn("run").scale == "1:20"
+    larger = picture(solved(in_unit(RUN, "mm", sheet='"A1"')), Drawing(WITHIN))
+    smaller = picture(solved(in_unit(RUN, "mm", sheet='"A4"')), Drawing(WITHIN))
+    assert (larger.scale, smaller.scale) == ("1:10", "1:50")  # 720 of 811 mm; 144 of 180 mm, where 1:20 takes 360
+
+
+def test_what_fits_no_sheet_is_laid_out_on_several_with_no_row_across_two() -> None:
+    shown = picture(solved(many(30)), Drawing(WITHIN))
+    assert shown.sheets > 1
+    high = shown.room[1]
+    feed = high + 40 * PAPER.note
+    top = shown.box[3]
+    for panel in shown.panels:
+        upper, lower = (top - (panel.box[side] + panel.at[1]) for side in (3, 1))
+        assert upper // feed == lower // feed, panel.name
+        assert lower % feed <= high + 1e-6
+
+
+def test_a_title_says_mark_stock_and_how_many_and_pulls_say_what_they_are_of() -> None:
+    panel = next(one for one in drawn("swags").panels if one.name == "S1")
+    said = [line.text for line in panel.titles]
+    assert said[:2] == ["S1", "chain DIN 763-6, 4 off"]
+    assert any("links" in line and "pin to pin" in line for line in said)
+    assert any("pull" in line and line.endswith("(dead load only)") for line in said)
+    assert all("(dead load only)" in line for line in said if "end pull" in line)
+
+
+def test_titles_stand_in_one_line_along_a_row() -> None:
+    feet = [panel.at[1] + panel.titles[0].at[1] for panel in drawn("swags").panels if panel.name in ("S1", "S2")]
+    assert feet[0] == pytest.approx(feet[1], abs=1e-9)
+
+
+def test_the_plan_names_each_support_once_and_every_piece() -> None:
+    plan = next(panel for panel in drawn("swags").panels if panel.name == "plan")
+    said = sorted(one.text for group in plan.groups for one in group.texts)
+    assert said == ["P1", "P2", "S1", "S2", "S3"]
+
+
+def test_the_plan_is_left_out_where_the_only_piece_is_drawn_in_plan() -> None:
+    assert not any(panel.name == "plan" for panel in drawn("net").panels)
+
+
+def test_the_notes_say_unit_scale_what_pulls_include_and_a_check_line_of_its_length() -> None:
+    shown = drawn("swags")
+    said = [one.text for one in shown.notes.texts]
+    assert "UNITS mm" in said
+    assert f"Scale {shown.scale} printed on A3" in said
+    assert "Pulls: dead load only" in said
+    (x0, y0), (x1, y1) = shown.notes.check
+    assert math.hypot(x1 - x0, y1 - y0) * shown.ratio / 1000 == pytest.approx(shown.notes.check_length, rel=1e-12)
+    assert f"check line {shown.notes.check_length * 1000:g} mm" in said
+
+
+def test_the_site_origin_is_stated() -> None:
+    shifted_away = f"{SWAGS}[site]\norigin = [437250, 112400, 0]\n"
+    said = " ".join(one.text for one in picture(solved(shifted_away), Drawing(WITHIN)).notes.texts)
+    assert "Site origin 437250 mm, 112400 mm, 0 mm is taken off every point" in said
+
+
+def test_a_caution_stands_in_the_notes_and_its_number_under_its_piece() -> None:
+    shown = drawn("run")
+    notes = " ".join(one.text for one in shown.notes.texts)
+    for number, caution in enumerate(solved(RUN).cautions, 1):
+        assert f"CAUTION {number}" in notes
+        assert " ".join(caution.text.split()) in notes
+    pointer = next(one for panel in shown.panels for one in panel.titles if one.text.startswith("see caution"))
+    assert pointer.look.colour == "warm"
+
+
+def test_links_that_leave_the_plane_are_not_drawn_and_those_in_it_all_are() -> None:
+    shown = drawn("swags")
+    counts = {p.name: sum(len(row.places) for group in p.groups for row in group.links) for p in shown.panels}
+    made = {piece.mark: piece.figures.links.count for piece in solved(SWAGS).pieces}
+    assert counts == {"heading": 0, "plan": 0} | made
+    assert not any(group.links for panel in drawn("net").panels for group in panel.groups)
+
+
+def test_supports_of_what_hangs_stand_over_it() -> None:
+    panel = next(one for one in drawn("swags").panels if one.name == "S2")
+    triangles = [p.points for p in panel.groups[0].paths if p.look == looks.LOOKS["held point"]]
+    assert len(triangles) == 2
+    assert all(points[0][1] < points[1:, 1].min() for points in triangles)
+
+
+@pytest.mark.parametrize("name", DESIGNS)
+def test_on_a_screen_nothing_overlaps_and_all_is_within_its_width(name: str) -> None:
+    shown = screen(solved(DESIGNS[name]))
+    boxes = [found for panel in shown.panels for found in texts(panel)]
+    tree = shapely.STRtree([box for _, box in boxes])
+    for number, (one, box) in enumerate(boxes):
+        left, _, right, _ = box.bounds
+        assert left >= 0, one.text
+        assert right <= WIDTH, one.text
+        for other in tree.query(box):
+            assert other <= number or box.intersection(boxes[other][1]).area < 1e-6, (one.text, boxes[other][0].text)
+        for panel in shown.panels:
+            lines = shapely.STRtree(heavy_lines(panel))
+            assert not len(lines.query(box, predicate="intersects")), one.text
+
+
+FRAME = Frame(fixed([0, 0, 0]), fixed([1, 0, 0]), fixed([0, 0, 1]))
+
+
+@given(st.lists(st.tuples(st.floats(0, 9), st.floats(0.05, 5)), min_size=1, max_size=12))
+@settings(max_examples=60, deadline=None)
+def test_in_rows_the_smaller_stands_nearer_and_no_two_overlap(spans: list[tuple[float, float]]) -> None:
+    given_ = [Dimension("horizontal", fixed([x, 0, 0]), fixed([x + long, 0, 0]), long) for x, long in spans]
+    rows = outside(measures(given_, FRAME, Wording("mm")), 0.02, (0.0, 0.0, 700.0, 50.0), PAPER)
+    lines = [(placed.paths[-3].points[0], placed.paths[-3].points[1], placed.measured / 0.02) for placed in rows.placed]
+    for one, (start, end, long) in enumerate(lines):
+        for other_start, other_end, other_long in lines[:one]:
+            over = min(end[0], other_end[0]) - max(start[0], other_start[0])
+            if over > 0.2:
+                assert start[1] != other_start[1]
+                # rows go downwards: what covers another wholly stands further out
+                covers = min(start[0], other_start[0]) in (start[0],) and long > other_long + 1e-6
+                if covers and start[0] <= other_start[0] and start[0] + long >= other_start[0] + other_long:
+                    assert start[1] < other_start[1]
+
+
+def test_no_measure_is_given_twice() -> None:
+    p, q = fixed([0, 0, 0]), fixed([2, 0, 0])
+    twice = [Dimension("horizontal", p, q, 2.0, "span"), Dimension("horizontal", q, p, 2.0, "span", rank=1)]
+    assert len(measures(twice, FRAME, Wording("mm"))) == 1
+
+
+def test_a_dimension_of_no_length_or_without_meaning_is_left_out() -> None:
+    p, q = fixed([0, 0, 0]), fixed([0, 0, 1])
+    none = [Dimension("horizontal", p, q, 0.0), Dimension("vertical", p, q, math.nan)]
+    assert measures(none, FRAME, Wording("mm")) == []
+
+
+@given(
+    st.lists(st.tuples(st.floats(10, 190), st.floats(10, 190)), min_size=1, max_size=60),
+    st.sampled_from(["node", "member"]),
+)
+@settings(max_examples=30, deadline=None)
+def test_marks_stay_off_one_another_and_off_lines(points: list[tuple[float, float]], role: str) -> None:
+    ground = Ground((0.0, 0.0, 200.0, 200.0), 0.5)
+    line = np.array([[0.0, 40.0], [200.0, 150.0]])
+    ground.lines(line, HEAVY)
+    wanted = [Wanted(f"N{n}", np.array(at), role) for n, at in enumerate(points)]  # type: ignore[arg-type]
+    marks = labels.place(wanted, ground, PAPER)
+    boxes = [shapely.Polygon(one.corners) for one in marks.texts]
+    assert len(boxes) + marks.dropped == len(points)
+    assert all(not box.intersects(shapely.LineString(line)) for box in boxes)
+    assert all(boxes[a].intersection(boxes[b]).area == 0 for a in range(len(boxes)) for b in range(a))
+
+
+def test_a_thousand_marks_with_room_are_all_placed() -> None:
+    ground = Ground((0.0, 0.0, 800.0, 600.0), 0.5)
+    x, y = np.meshgrid(np.linspace(10, 790, 40), np.linspace(10, 590, 25))
+    wanted = [Wanted(str(n), np.array(at), "node", 0.3) for n, at in enumerate(zip(x.ravel(), y.ravel(), strict=True))]
+    assert labels.place(wanted, ground, PAPER).dropped == 0
+
+
+def test_a_crowded_view_gets_smaller_marks_before_any_is_dropped() -> None:
+    ground = Ground((0.0, 0.0, 200.0, 200.0), 0.5)
+    x, y = np.meshgrid(np.linspace(10, 190, 20), np.linspace(10, 190, 28))
+    wanted = [Wanted(f"M{n}", np.array(at), "member") for n, at in enumerate(zip(x.ravel(), y.ravel(), strict=True))]
+    marks = labels.place(wanted, ground, PAPER)
+    assert {one.height for one in marks.texts} == {PAPER.small}
+
+
+@given(st.lists(st.tuples(st.floats(-50, 250), st.floats(-50, 250)), min_size=2, max_size=8), st.floats(0, 3.1))
+@settings(max_examples=80, deadline=None)
+def test_a_line_through_a_box_is_always_met(points: list[tuple[float, float]], angle: float) -> None:
+    ground = Ground((0.0, 0.0, 200.0, 200.0), 0.5)
+    line = np.array(points)
+    ground.lines(line, HEAVY)
+    one = Text(looks.LOOKS["note"], "Sixteen letters.", (100.0, 100.0), 2.5, "centre", angle)
+    if shapely.LineString(line).intersects(shapely.Polygon(one.corners)):
+        assert not ground.free_turned(one.corners, ANY, 0.4)
+        assert angle or not ground.free(one.box, ANY, 0.4)
+
+
+def test_measured_text_is_at_least_as_wide_as_in_the_fonts_it_was_measured_in() -> None:
+    found = _fonts()
+    if not found:
+        pytest.skip("none of the fonts is on this machine")
+    for font, capital in found:
+        names, advances = font.getBestCmap(), font["hmtx"]
+        for character, wide in text.WIDTHS.items():
+            if ord(character) in names:
+                assert advances[names[ord(character)]][0] / capital <= wide + 1e-9, character
+
+
+def _fonts() -> list[tuple[Any, int]]:
+    from pathlib import Path
+
+    from fontTools.ttLib import TTFont  # type: ignore[import-untyped]
+
+    root = Path("/usr/share/fonts/truetype")
+    capitals = {"liberation/LiberationSans-Regular.ttf": 1409, "dejavu/DejaVuSans.ttf": 1493}  # units of the em
+    return [(TTFont(root / name), capital) for name, capital in capitals.items() if (root / name).exists()]
+
+
+@given(st.text("abc DEF mm 123,.", min_size=1, max_size=200), st.floats(5, 60))
+def test_wrapped_lines_hold_every_word_and_are_no_wider_than_allowed(said: str, widest: float) -> None:
+    lines = text.wrapped(said, widest)
+    assert " ".join(lines).split() == said.split()
+    assert all(text.width(line) <= widest or " " not in line for line in lines)
+
+
+def test_scales_are_those_of_iso_5455_and_the_architects() -> None:
+    metric = [one.says for one in scale.scales("mm")][:14]
+    assert metric == [
+        *(f"{n}:1" for n in (50, 20, 10, 5, 2)),
+        *(f"1:{n}" for n in (1, 2, 5, 10, 20, 50, 100, 200, 500)),
+    ]
+    # standards: 3/4 in = 1 ft is 1:16, 1/2 in 1:24, 1/4 in 1:48, 1/8 in 1:96
+    feet = {one.says: one.ratio for one in scale.scales("ft")}
+    for said, ratio in {"3/4": 16, "1/2": 24, "1/4": 48, "1/8": 96}.items():
+        assert feet[f'{said}" = 1\'-0" (1:{ratio})'] == ratio
+
+
+def test_the_drawing_space_is_that_of_iso_5457() -> None:
+    # ISO 5457: 821 x 1159, 574 x 811, 400 x 564, 277 x 390, 180 x 277 mm
+    spaces = {
+        name: sorted((one.width, one.height)) for name in ("A0", "A1", "A2", "A3", "A4") for one in [scale.sheet(name)]
+    }
+    assert spaces == {"A0": [821, 1159], "A1": [574, 811], "A2": [400, 564], "A3": [277, 390], "A4": [180, 277]}
+
+
+@given(st.floats(1e-3, 1e6))
+def test_a_check_line_is_round_and_fills_at_least_two_fifths_of_its_room(room: float) -> None:
+    long = scale.round_length(room)
+    assert room / 2.5 * (1 - 1e-9) <= long <= room * (1 + 1e-9)
+    assert f"{long:.6e}"[0] in "125"
+    assert float(f"{long:.0e}") == pytest.approx(long, rel=1e-12)
+
+
+def test_lengths_are_said_to_what_a_shop_can_do() -> None:
+    assert Wording("mm").length(1.8844) == "1884"
+    assert Wording("mm", finer=1).length(0.12345) == "123.5"
+    assert Wording("m").length(1.8844) == "1.884"
+    assert Wording("ft").length(0.3048 * 13 + 0.0254 * 9.5) == "13'-9 1/2\""
+    # 1800 mm = 70.866 in: 5 ft 10 7/8 in
+    assert Wording("in").length(1.8) == '70 7/8"'
+    assert Wording("in").length(0.0254 * 0.25) == '1/4"'
+
+
+def test_quantities_are_said_in_the_trades_words() -> None:
+    wording = Wording("mm")
+    assert wording.quantity(Quantity("links", 35.0)) == "35 links"
+    assert wording.quantity(Quantity("pin_to_pin", 1.884, Unit("m"))) == "pin to pin 1884 mm"
+    assert wording.quantity(Quantity("mass", 2.0689, Unit("kg"))) == "mass 2.07 kg"
+    assert force(999.4) == "999 N"
+    assert force(999.6) == "1.00 kN"
+    assert force(1177.0) == "1.18 kN"
+    assert significant(0.00123456) == "0.00123"
+
+
+def test_a_straight_curve_seen_from_above_is_two_points() -> None:
+    along = np.stack([np.linspace(0, 3, 50), np.linspace(0, 4, 50)], axis=1)
+    assert tidy(along) == pytest.approx(np.array([[0, 0], [3, 4.0]]))
+    there_and_back = np.concatenate([along, along[::-1]])
+    assert tidy(there_and_back) == pytest.approx(np.array([[0, 0], [3, 4.0]]))
+    assert len(tidy(np.tile([1.0, 2.0], (5, 1)))) == 1
+
+
+def test_a_links_outline_has_its_sizes() -> None:
+    row = drawn("swags").panels[1].groups[0].links[0]
+    outer, inner = (outline.points for outline in outlines(row, face_on=True))
+    # half circles reach half the width beyond the straights
+    assert np.ptp(outer[:, 0]) + row.width == pytest.approx(row.pitch + 2 * row.wire, rel=1e-12)
+    assert np.ptp(outer[:, 1]) == pytest.approx(row.width, rel=1e-12)
+    assert np.ptp(inner[:, 0]) + row.width - 2 * row.wire == pytest.approx(row.pitch, rel=1e-12)
+
+
+def test_the_box_round_nothing_is_empty() -> None:
+    assert around() == (math.inf, math.inf, -math.inf, -math.inf)
