@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import doctest
 from collections.abc import Callable, Iterator
 from functools import cache
 from typing import Any
@@ -277,8 +278,15 @@ def test_what_cannot_hang_is_nan_throughout_and_leaves_its_neighbours_alone(
         assert values[0] == values[2]
 
 
+def test_the_examples_of_the_module_run() -> None:
+    results = doctest.testmod(catenary)
+    assert results.attempted > 0
+    assert results.failed == 0
+
+
 def test_numbers_give_arrays_without_axes_and_shapes_broadcast() -> None:
     single = catenary.from_length(2, 0, 3)
+    assert isinstance(single.lowest_at, np.ndarray)
     assert single.sag.shape == single.pulls(1).at_to.shape == ()
     table = catenary.from_length(np.full((3, 1), 2.0), 0.5, np.linspace(2.5, 4.0, 4))
     assert table.span.shape == table.sag.shape == table.pulls(np.ones(4)).horizontal.shape == (3, 4)

@@ -185,7 +185,7 @@ def _from_length(span: Floats, rise: Floats, length: Floats) -> tuple[Floats, Fl
 
 def _close(span: Floats, distance: Floats, length: Floats, excess: Floats) -> tuple[Floats, Floats]:
     """Give u and the parameter; u is NaN where no member can hang."""
-    s = formulas.log_stretch(span, distance, excess)
+    s = formulas.log_stretch(span, distance, length, excess)
     # three reductions, instead of seven passes, where all is in order; with a NaN among them none is true
     if span.min(initial=np.inf) > _PLUMB and excess.min(initial=np.inf) >= 0.0 and length.max(initial=0.0) < np.inf:
         u = half_angle(s)

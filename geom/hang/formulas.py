@@ -71,15 +71,18 @@ def excess_and_chord(span: Floats, rise: Floats, length: Floats) -> tuple[Floats
     """Give L - D and D; L - D is negative where the length does not reach."""
     distance = chord(span, rise)
     excess = length - distance
-    repair(np.abs(excess) < _NEAR_TAUT * distance, excess, _near_taut_excess, span, rise, length)
+    repair(excess < _NEAR_TAUT * distance, excess, _near_taut_excess, span, rise, length)
     return excess, distance
 
 
 def _half_log1p(first: Floats, second: Floats, span: Floats) -> Floats:
     """Give ln(1 + f g/S^2)/2, by the logarithms of f, g and S where the ratio may not be a normal double."""
-    ratio = first * second / (span * span)
-    result = 0.5 * np.log1p(ratio)
-    repair(~(ratio < _LARGE_RATIO), result, _half_log, first, second, span)
+    ratio = first * second
+    ratio /= span * span
+    result = np.log1p(ratio)
+    result *= 0.5
+    if not ratio.max(initial=0.0) < _LARGE_RATIO:
+        repair(~(ratio < _LARGE_RATIO), result, _half_log, first, second, span)
     return result
 
 
@@ -88,9 +91,9 @@ def _half_log(first: Floats, second: Floats, span: Floats) -> Floats:
     return np.where(first == 0.0, 0.0, result)
 
 
-def log_stretch(span: Floats, distance: Floats, excess: Floats) -> Floats:
+def log_stretch(span: Floats, distance: Floats, length: Floats, excess: Floats) -> Floats:
     """Give s = ln(sqrt(L^2 - v^2)/S), from L^2 - v^2 = S^2 + (L - D)(L + D)."""
-    return _half_log1p(excess, 2.0 * distance + excess, span)
+    return _half_log1p(excess, length + distance, span)
 
 
 def less_rise(span: Floats, v: Floats, length: Floats, excess: Floats) -> Floats:
@@ -157,10 +160,13 @@ def sag(span: Floats, rise: Floats, length: Floats, excess: Floats, u: Floats) -
     result /= u
     result *= 0.5
     result += sag_at_mid(length, u)
-    repair(u == 0.0, result, np.zeros_like, u)
-    # on a plumb line the chord's top stands over the lowest point: the limit is (L + |v|)/2
-    repair(u == np.inf, result, lambda length, v: 0.5 * (length + v), length, v)
+    repair(np.isnan(result), result, _limit_of_sag, length, v, u)
     return result
+
+
+def _limit_of_sag(length: Floats, v: Floats, u: Floats) -> Floats:
+    """Give 0 of a taut member, and on a plumb line (L + |v|)/2: there the chord's top is over the lowest point."""
+    return np.select([u == 0.0, u == np.inf], [0.0, 0.5 * (length + v)], np.nan)
 
 
 def ends(
@@ -185,7 +191,7 @@ def ends(
     more = np.expm1(u + u)
     np.divide(1.0, more, out=more)  # (coth u - 1)/2
     lift = rise * more
-    repair((u == 0.0) & (v == 0.0), lift, np.zeros_like, u)
+    repair(np.isnan(lift), lift, _limit_of_lift, u)
     more *= length
     v -= rise
     v *= 0.5
@@ -193,3 +199,8 @@ def ends(
     v += rise
     to_part = np.add(half_less, v, out=half_less)  # (L + v)/2
     return more + from_part, more + to_part, from_part - lift, to_part + lift
+
+
+def _limit_of_lift(u: Floats) -> Floats:
+    """Give 0 for what is 0 times infinity: v coth u of a member both taut and level."""
+    return np.where(u == 0.0, 0.0, np.nan)

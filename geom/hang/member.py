@@ -110,7 +110,7 @@ class Hang:
     @cached_property
     def lowest_at(self) -> Floats:
         """Plan distance from `from` to the lowest point of the member, metres."""
-        return np.clip(self.vertex_at, 0.0, self.span)
+        return np.asarray(np.clip(self.vertex_at, 0.0, self.span))
 
     @cached_property
     def below_from(self) -> Floats:
