@@ -20,6 +20,7 @@ from geom.solids import (
     Balls,
     Bars,
     Body,
+    Faceted,
     Link,
     Links,
     Mesh,
@@ -83,6 +84,7 @@ BODIES: dict[str, Body] = {
     "dome": Shell(BALL.vertices, DOME, 0.3),
     "union": Union((Sweep(SLOPING, 0.01), Balls(SLOPING.p[None], 0.02))),
 }
+BODIES["facets"] = Faceted(BODIES["corbel"].mesh(WITHIN))
 every_body = pytest.mark.parametrize("body", BODIES.values(), ids=BODIES.keys())
 
 
@@ -220,7 +222,9 @@ def test_a_strand_that_doubles_back_is_two_bars() -> None:
     mesh = Sweep(hanging_strands([0, 0, 3], [0, 0, 2], 4.0), 0.01).mesh(WITHIN)
     assert mesh.is_watertight
     assert mesh.bodies == 2
-    assert mesh.volume == pytest.approx(np.pi * 1e-4 * 4, rel=1e-12)
+    # Each of the two is longer by three thousandths of its thickness, so that they share no corner.
+    assert mesh.volume == pytest.approx(np.pi * 1e-4 * (4 + 2 * 3e-3 * 0.02), rel=1e-4)
+    assert len(np.unique(mesh.vertices.astype(np.float32), axis=0)) == len(mesh.vertices)
 
 
 def test_a_knot_closes_without_a_seam() -> None:
@@ -258,9 +262,23 @@ def test_bars_are_the_sweeps_of_their_curves() -> None:
     bars = Bars(points, first, 0.01, length=sum(c.length for c in curves))
     single = [Sweep(curve, 0.01) for curve in curves]
     assert bars.volume == pytest.approx(sum(body.volume for body in single), rel=1e-14)
-    corners = np.concatenate([body.mesh(WITHIN).corners for body in single])
-    ours = bars.mesh(WITHIN).corners
-    assert np.sort(ours.reshape(-1, 9), axis=0) == pytest.approx(np.sort(corners.reshape(-1, 9), axis=0), abs=1e-12)
+    mesh = bars.mesh(WITHIN)
+    true = sum(body.mesh(WITHIN).volume for body in single)
+    # Each is longer by three thousandths of the section's size.
+    assert mesh.volume == pytest.approx(true + 2 * 3e-3 * 0.02 * np.pi * 1e-4, rel=1e-6)
+    starts = np.concatenate([np.zeros(1, int), np.cumsum([len(body.mesh(WITHIN).vertices) for body in single])])
+    for number, body in enumerate(single):
+        ours = mesh.vertices[starts[number] : starts[number + 1]]
+        assert ours == pytest.approx(body.mesh(WITHIN).vertices, abs=2.1e-3 * 0.0211)
+
+
+def test_bars_in_line_share_no_corner() -> None:
+    # Two bars along x and one from the other side: end to start, start to start and end to end.
+    ends = np.array([[0, 1], [1, 2], [1, 0], [3, 2], [2, 3.0]])
+    points = np.zeros((10, 3))
+    points[:, 0] = ends.ravel()
+    mesh = Bars(points, np.arange(0, 11, 2), 0.02).mesh(WITHIN)
+    assert len(np.unique(mesh.vertices.astype(np.float32), axis=0)) == len(mesh.vertices)
 
 
 def test_bars_need_whole_polylines() -> None:
@@ -549,6 +567,12 @@ def test_a_mesh_inside_out_has_a_negative_volume() -> None:
 def test_a_mesh_far_away_keeps_its_volume() -> None:
     mesh = one_link(CHAIN).mesh(WITHIN)
     assert mesh.moved(at(1e5, 1e5, 0)).volume == pytest.approx(mesh.volume, rel=1e-6)
+
+
+def test_a_body_of_open_facets_is_refused() -> None:
+    mesh = one_link(CHAIN).mesh(WITHIN)
+    with pytest.raises(ValueError, match="needs a watertight surface"):
+        Faceted(Mesh(mesh.vertices, mesh.faces[1:]))
 
 
 def test_a_mesh_of_faces_without_vertices_is_refused() -> None:

@@ -3,6 +3,7 @@
 from geom.solids.bars import Bars
 from geom.solids.body import Body, Solid, Union
 from geom.solids.copies import Balls
+from geom.solids.faceted import Faceted
 from geom.solids.frames import Places, link_frames, no_twist
 from geom.solids.links import Link, Links
 from geom.solids.mesh import Facets, Mesh, merged
@@ -14,6 +15,7 @@ __all__ = [
     "Balls",
     "Bars",
     "Body",
+    "Faceted",
     "Facets",
     "Link",
     "Links",

@@ -10,7 +10,7 @@ from geom.curves.base import Array, Index, fixed
 from geom.solids.body import Body
 from geom.solids.mesh import Facets, Mesh
 from geom.solids.section import Section, area, checked, checked_hole, polygons
-from geom.solids.skin import skin
+from geom.solids.skin import overlapping, skin
 
 _ON_PLAN = 1e-9  # as for curves: less aside than this share of the height is rounding
 _POINTS_A_CHUNK = 2048
@@ -20,7 +20,8 @@ _POINTS_A_CHUNK = 2048
 class Bars(Body):
     """One section along many polylines at once, each in a vertical plane: the members of a net or a frame.
 
-    The section's x axis is level and square to each member's plane.
+    The section's x axis is level and square to each member's plane. Members are lengthened by a few thousandths of
+    the section, so that those which meet overlap.
     """
 
     points: Array  # (k, 3) m, one polyline after another
@@ -84,6 +85,7 @@ class Bars(Body):
         first = self.first[start : stop + 1]
         points = self.points[first[0] : first[-1]]
         first = first - first[0]
+        points = overlapping(points, first, float(np.ptp(rings[0])))
         way = points[first[1:] - 1] - points[first[:-1]]
         level = np.hypot(way[:, 0], way[:, 1])
         plumb = level <= _ON_PLAN * np.abs(way[:, 2])

@@ -12,6 +12,31 @@ from geom.solids.frames import no_twist
 from geom.solids.mesh import Mesh
 from geom.solids.triangles import triangulated
 
+_OVERLAP = 1e-3  # of the section: under what can be made, over the rounding of a file's float32
+
+
+def overlapping(points: Array, first: Index, width: float) -> Array:
+    """Lengthen polylines a little at both ends, by unlike amounts.
+
+    Tubes that meet in line at a node, or double back on one another, would otherwise share the corners and edges
+    of their ends: a file of facets, where equal corners are one, would then have edges of four facets.
+
+    Parameters
+    ----------
+    points : ndarray, shape (k, 3)
+        Polylines one after another, m.
+    first : ndarray, shape (m + 1,)
+        Polyline i is ``points[first[i]:first[i + 1]]``.
+    width : float
+        Size of the section, m; the ends move by one and two thousandths of it.
+    """
+    points = points.copy()
+    start, end = first[:-1], first[1:] - 1
+    back, ahead = points[start] - points[start + 1], points[end] - points[end - 1]
+    for at, way, share in ((start, back, 1.0), (end, ahead, 2.0)):
+        points[at] += share * _OVERLAP * width * way / np.linalg.norm(way, axis=1, keepdims=True)
+    return points
+
 
 def skin(points: Array, first: Index, sides: Array, rings: tuple[Array, ...], *, factors: Array | None = None) -> Mesh:
     """Surface of a section along polylines, mitred at their corners and capped at their ends.

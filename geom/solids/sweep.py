@@ -13,7 +13,7 @@ from geom.solids.body import Body
 from geom.solids.frames import level_side, no_twist
 from geom.solids.mesh import Mesh, merged
 from geom.solids.section import Section, area, checked, checked_hole, polygons
-from geom.solids.skin import closed_skin, skin
+from geom.solids.skin import closed_skin, overlapping, skin
 
 # Over this turn a mitre reaches out by more than 1.7 radii and grows without bound: a line that doubles back is cut
 # there and both parts end square.
@@ -96,7 +96,8 @@ class Sweep(Body):
             here = slice(first, last + 1)
             size = None if factors is None else factors[here]
             ends = np.array([0, last + 1 - first])
-            parts.append(skin(points[here], ends, sides[first:last], rings, factors=size))
+            line = points[here] if len(cuts) == 2 else overlapping(points[here], ends, float(np.ptp(rings[0])))
+            parts.append(skin(line, ends, sides[first:last], rings, factors=size))
         return merged(parts)
 
 
