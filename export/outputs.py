@@ -4,11 +4,11 @@ from __future__ import annotations
 
 import importlib
 from collections.abc import Callable, Iterable, Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from pathlib import Path
 
 from geom.registry import modules
-from geom.result import Result
+from geom.result import Caution, Result
 
 Checked = Mapping[str, object]
 
@@ -45,12 +45,20 @@ class Output:
     """An output: the word `--only` knows it by, its writer, and its check of a written file read back in full.
 
     `write(result, choices)` yields the files. `verify(path, result, choices)` reads one of them back, returns what was
-    checked and raises CheckFailed on the first thing that is wrong.
+    checked and raises CheckFailed on the first thing that is wrong. `cautions(result, choices)` says what a user must
+    know of the way this output shows the result (links drawn as tubes, walls thickened for a print).
     """
 
     name: str
     write: Callable[[Result, Choices], Iterable[File]]
     verify: Callable[[Path, Result, Choices], Checked]
+    cautions: Callable[[Result, Choices], Iterable[Caution]] = lambda _result, _choices: ()
+
+
+def with_cautions(result: Result, made: Iterable[Output], choices: Choices) -> Result:
+    """Return the result with the cautions of the outputs that are to be made of it, for every output to show."""
+    added = (caution for output in made for caution in output.cautions(result, choices))
+    return replace(result, cautions=tuple(dict.fromkeys((*result.cautions, *added))))
 
 
 def outputs() -> dict[str, Output]:

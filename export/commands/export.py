@@ -5,6 +5,7 @@ Each design gets a folder of its own, DIR/NAME/, and every file in it begins wit
 
 from __future__ import annotations
 
+from dataclasses import replace
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -45,23 +46,25 @@ def export(  # noqa: D103, PLR0913, PLR0917 - click hands over each option as a 
     quiet: bool,
     debug: bool,  # looked up where failures are said
 ) -> int:
-    from export.outputs import Choices
+    from export.outputs import Choices, with_cautions
     from export.save import Order, save
 
     made, partial = _asked_for(only)
 
     def act(worked: Worked, report: Report) -> None:
         assert worked.result is not None
+        choices = Choices(worked.within, real_links, report)
+        result = with_cautions(worked.result, made, choices)
         order = Order(
-            worked.result,
+            result,
             worked.path.stem,
             worked.made_from,
             made,
             partial=partial,
-            choices=Choices(worked.within, real_links, report),
+            choices=choices,
             verify=verify,
         )
-        _say(worked, save(order, into), quiet=quiet)
+        _say(replace(worked, result=result), save(order, into), quiet=quiet)
 
     return round_of(designs, act, within=within, quiet=quiet, unique=True)
 
