@@ -11,8 +11,6 @@ cannot spoil the proof.
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy.optimize import linprog
-from scipy.sparse import csr_array
 
 from geom.shop.filling import Job, Reel
 from geom.shop.knapsack import Knapsack, best_fillings
@@ -132,6 +130,9 @@ class Columns:
 
     def _mixture(self, most: Whole) -> tuple[Floats, Floats, float]:
         """Return the best mixture of the known ways, prices of the pieces, and its cost in longest reels."""
+        from scipy.optimize import linprog  # half a second, and few designs come this far
+        from scipy.sparse import csr_array
+
         kinds, ways, numbers = self._entries
         matrix = csr_array((numbers, (kinds, ways)), shape=(len(most), len(self.ways)))
         keep = np.flatnonzero(most)
