@@ -165,7 +165,8 @@ def test_chords_between_points_are_no_longer_than_the_member(shape: Shape, count
     hang = catenary.from_excess(*shape)
     points = hang.at_length(np.linspace(0.0, float(hang.length), count))
     chords = float(np.hypot(np.diff(points.plan), np.diff(points.elevation)).sum())
-    assert float(hang.chord) * (1.0 - 1e-14) <= chords <= float(hang.length) * (1.0 + 1e-14)
+    rounding = 1e-14 * float(hang.length)
+    assert float(hang.chord) - rounding <= chords <= float(hang.length) + rounding
 
 
 def _is_lower(deep: Hang, shallow: Hang) -> bool:
