@@ -59,7 +59,7 @@ def new(fmt: Format, layers: Mapping[str, Look]) -> Drawing:
     """Return an empty document with the layers, line types and styles of drawings."""
     from ezdxf.filemanagement import new as new_document
 
-    with _quietly(fmt):
+    with _quietly(fmt), _undated():
         doc = new_document(fmt.version, setup=False)
     if not fmt.old:
         doc.header["$INSUNITS"] = units.UNITS[fmt.unit].insunits
@@ -85,6 +85,19 @@ def _quietly(fmt: Format) -> Iterator[None]:
         yield
     finally:
         logger.setLevel(before)
+
+
+@contextmanager
+def _undated() -> Iterator[None]:
+    """Keep time and chance out of what the library writes."""
+    from ezdxf._options import options
+
+    before = options.write_fixed_meta_data_for_testing
+    options.write_fixed_meta_data_for_testing = True
+    try:
+        yield
+    finally:
+        options.write_fixed_meta_data_for_testing = before
 
 
 def _line_types(doc: Drawing, fmt: Format, layers: Mapping[str, Look]) -> None:
@@ -134,8 +147,6 @@ def chunks(
 
     `box` and `height` are the extents written into the header, drawing units.
     """
-    from ezdxf._options import options
-
     space = doc.modelspace()
     space.reset_extents((box[0], box[1], height[0]), (box[2], box[3], height[1]))
     space.reset_limits(box[:2], box[2:])
@@ -145,12 +156,8 @@ def chunks(
             doc.classes.add_class(name)
         doc.classes.classes = dict(sorted(doc.classes.classes.items()))
     stream = io.StringIO()
-    before = options.write_fixed_meta_data_for_testing
-    options.write_fixed_meta_data_for_testing = True
-    try:
+    with _undated():
         doc.write(stream)
-    finally:
-        options.write_fixed_meta_data_for_testing = before
     text = stream.getvalue()
     for start in range(0, len(text), _CHUNK):
         yield doc.encode(text[start : start + _CHUNK])

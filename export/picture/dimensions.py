@@ -225,18 +225,18 @@ def placed(measure: Measure, text: Text, angle: float, line_at: tuple[float, flo
 
 
 def _levels(levels: Sequence[Measure], side: str, per: float, box: Box, sizes: Sizes) -> list[Placed]:
-    """Level marks in one column, in order of height, no two texts nearer than their leading."""
+    """Level marks in one column beside a box, in order of height, no two texts nearer than their leading."""
     if not levels:
         return []
     way = 1.0 if side == "right" else -1.0
     column = (box[2] if side == "right" else box[0]) + way * 2.5 * sizes.gap
     ordered = sorted(levels, key=lambda level: level.value)
-    heights = _spread([float(level.q[1]) / per for level in ordered], 2.2 * sizes.note)
+    heights = spread([float(level.q[1]) / per for level in ordered], 2.2 * sizes.note)
     return [_level(level, height, column, way, per, sizes) for level, height in zip(ordered, heights, strict=True)]
 
 
-def _spread(heights: Sequence[float], apart: float) -> list[float]:
-    """Heights in rising order moved up as little as it takes to stand apart."""
+def spread(heights: Sequence[float], apart: float) -> list[float]:
+    """Return heights in rising order moved up as little as it takes to stand apart."""
     moved: list[float] = []
     for height in heights:
         moved.append(max(height, moved[-1] + apart) if moved else height)

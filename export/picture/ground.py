@@ -23,6 +23,7 @@ class Ground:
 
     box: Box  # print units
     cell: float  # print units
+    wide: bool = True  # whether it reaches round what is drawn
     cells: NDArray[np.uint8] = field(init=False)
 
     def __post_init__(self) -> None:

@@ -5,11 +5,11 @@ from dataclasses import dataclass, field, replace
 
 import numpy as np
 
-from export.picture.dimensions import Measure, oblique, placed
+from export.picture.dimensions import Measure, oblique, placed, spread
 from export.picture.ground import ANY, HEAVY, LIGHT, TEXT, Ground
 from export.picture.looks import LOOKS
 from export.picture.sizes import Sizes
-from export.picture.values import Floats, Path, Placed, Text, corners_of, xy
+from export.picture.values import Box, Floats, Path, Placed, Text, corners_of, xy
 
 _LOOK = LOOKS["dimension"]
 _SLIDES = (0.0, 0.15, -0.15, 0.3, -0.3)  # of the text's middle along the line, in its length
@@ -21,12 +21,21 @@ _BEFORE = (0.0, 1.0, 0.5, 0.25, 0.75)  # how much of its line is left of the lea
 _OFFSETS = (1.0, 1.8, 2.6, 3.4)  # of an aligned dimension outside the figure, in first rows
 
 
+@dataclass(frozen=True, eq=False)
+class Left:
+    """A dimension whose text found no room: its line is drawn already."""
+
+    measure: Measure
+    line: tuple[Floats, Floats]
+    paths: list[Path]
+
+
 @dataclass
 class Inside:
-    """Dimensions in place, and how many there was no room for."""
+    """Dimensions in place, and those there was no room for."""
 
     placed: list[Placed] = field(default_factory=list)
-    dropped: int = 0
+    left: list[Left] = field(default_factory=list)
 
 
 def inside(found: Sequence[Measure], per: float, ground: Ground, sizes: Sizes) -> Inside:
@@ -36,10 +45,10 @@ def inside(found: Sequence[Measure], per: float, ground: Ground, sizes: Sizes) -
     """
     before = ground.cells.copy()
     result = _inside(found, per, ground, sizes)
-    if result.dropped:
+    if result.left:
         first, ground.cells = ground.cells, before
         smaller = _inside(found, per, ground, replace(sizes, note=sizes.small))
-        if smaller.dropped < result.dropped:
+        if len(smaller.left) < len(result.left):
             return smaller
         ground.cells = first
     return result
@@ -54,10 +63,24 @@ def _inside(found: Sequence[Measure], per: float, ground: Ground, sizes: Sizes) 
     for measure, (start, end, paths) in zip(found, lines, strict=True):
         done = _with_text(measure, (start, end), paths, ground, sizes)
         if done is None:
-            result.dropped += 1
+            result.left.append(Left(measure, (start, end), paths))
         else:
             result.placed.append(done)
     return result
+
+
+def column(left: Sequence[Left], box: Box, sizes: Sizes) -> list[Placed]:
+    """Return dimensions whose texts stand one over another to the right of a box, each with a leader."""
+    ordered = sorted(left, key=lambda one: float(one.line[1][1]))
+    heights = spread([float((one.line[0][1] + one.line[1][1]) / 2) for one in ordered], 2.0 * sizes.note)
+    return [_in_column(one, xy(box[2] + 3 * sizes.gap, y), sizes) for one, y in zip(ordered, heights, strict=True)]
+
+
+def _in_column(left: Left, at: Floats, sizes: Sizes) -> Placed:
+    start, end = left.line
+    text = Text(_LOOK, left.measure.text, (float(at[0] + 0.5 * sizes.gap), float(at[1] - sizes.note / 2)), sizes.note)
+    leader = Path(_LOOK, np.stack([(start + end) / 2, at - xy(2 * sizes.gap, 0.0), at]))
+    return _done(left.measure, left.line, text, [*left.paths, leader])
 
 
 def _line(measure: Measure, per: float, ground: Ground, sizes: Sizes) -> tuple[Floats, Floats, list[Path]]:

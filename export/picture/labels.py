@@ -11,10 +11,10 @@ from dataclasses import dataclass, field
 import numpy as np
 
 from export.picture import text as measure
-from export.picture.ground import ANY, HEAVY, LIGHT, TEXT, Ground
+from export.picture.ground import ANY, HEAVY, LIGHT, TEXT, Ground, grown
 from export.picture.looks import LOOKS
 from export.picture.sizes import Sizes
-from export.picture.values import Circle, Floats, Path, Text
+from export.picture.values import Box, Circle, Floats, Path, Text, box_of
 from geom.result import LabelRole
 
 _MANY = 20  # marks in a view from which on they may be smaller
@@ -77,6 +77,17 @@ def place(wanted: Sequence[Wanted], ground: Ground, sizes: Sizes) -> Marks:
         else:
             tired = 0
     return marks
+
+
+def reserved(wanted: Sequence[Wanted], sizes: Sizes) -> list[Box]:
+    """Return the boxes of the places that marks with a place of their own are tried at first."""
+    boxes = []
+    for mark in wanted:
+        if mark.first is not None:
+            tag = _tag(mark, sizes.note)
+            middle, _ = next(_places(tag, sizes))
+            boxes.append(box_of(grown(_corners(tag, middle, 0.0), 0.5 * sizes.gap)))
+    return boxes
 
 
 def _around_all(wanted: Sequence[Wanted], ground: Ground, sizes: Sizes, height: float) -> tuple[Marks, list[Wanted]]:

@@ -6,7 +6,7 @@ from dataclasses import dataclass
 from export.picture import notes as noting
 from export.picture import plan as planning
 from export.picture.arrange import Arranged, Foot, arrange
-from export.picture.panels import Print, Subject, elevation, printed, subject
+from export.picture.panels import Marks, Print, Subject, elevation, printed, subject
 from export.picture.plan import Site
 from export.picture.scale import Scale, Sheet, scales, sheet
 from export.picture.sizes import PAPER
@@ -18,6 +18,7 @@ from geom.result import Result
 _SMALLEST = 25.0  # printed mm: once all geometry is smaller, a smaller scale makes no more room for its text
 _MORE_SHEETS = 1.5  # times the fewest sheets possible: so much a larger scale may cost
 _TITLE_ROOM = 12.0  # at least this much stands under each view, mm: mark and two lines
+_MARKS: tuple[Marks, ...] = ("free", "within")  # tried in turn
 _NOTES_WIDTH = 120.0  # of the notes' column, mm
 
 
@@ -61,9 +62,8 @@ def picture(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> P
     on = sheet(result.setting.drawing.sheet)
     candidates = list(_candidates(found))
     for scale in candidates:
-        arranged = _unmarked(found, scale, on) and _marked(found, scale, on)
-        if arranged is not None:
-            return _picture(arranged, scale, on)
+        if _unmarked(found, scale, on) is not None:
+            return _picture(_marked(found, scale, on), scale, on)
     return _on_sheets(found, candidates, on)
 
 
@@ -77,11 +77,8 @@ def _on_sheets(found: Contents, candidates: Sequence[Scale], on: Sheet) -> Pictu
         if arranged is None or arranged.sheets > _MORE_SHEETS * fewest:
             break
         fitting.append(scale)
-    for scale in reversed(fitting):
-        marked = _marked(found, scale, on, feed=True)
-        if marked is not None:
-            return _picture(marked, scale, on)
-    raise AssertionError("the smallest scale brings any view onto a sheet")
+    chosen = fitting[-1]
+    return _picture(_marked(found, chosen, on, feed=True), chosen, on)
 
 
 def _candidates(found: Contents) -> Iterator[Scale]:
@@ -96,29 +93,36 @@ def _unmarked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -
     """Everything but the marks in place at a scale, if it fits: first tried with no more than the geometry."""
     print_ = Print(scale.ratio / 1000, PAPER, found.wording)
     heading = noting.heading(found.words, PAPER, width=on.width)
-    notes = noting.notes(found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH)
+    notes = noting.notes(found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH, dropped=1, sheets=2)
     if arrange(_bare(found, print_), Foot(heading, None, notes), on, PAPER, feed=feed) is None:
         return None
-    views, plan = _panels(found, print_, marks=False)
+    views, plan = _panels(found, print_, marks="none")
     return arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed)
 
 
-def _marked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged | None:
-    """Everything in place at a scale, if it fits."""
+def _marked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged:
+    """Everything in place at a scale at which it fits without marks.
+
+    Where it does not fit with them, marks are held to the room that is taken anyway: a smaller scale would leave them
+    still less.
+    """
     print_ = Print(scale.ratio / 1000, PAPER, found.wording)
     heading = noting.heading(found.words, PAPER, width=on.width)
-    notes = noting.notes(found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH)
-    views, plan = _panels(found, print_, marks=True)
-    arranged = arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed)
-    if arranged is None:
-        return None
-    dropped = sum(panel.dropped for panel in arranged.panels)
-    if not dropped and arranged.sheets == 1:
-        return arranged
-    said = noting.notes(
-        found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH, dropped=dropped, sheets=arranged.sheets
-    )
-    return arrange(views, Foot(heading, plan, said), on, PAPER, feed=feed)
+    for marks in _MARKS:
+        views, plan = _panels(found, print_, marks=marks)
+        dropped = sum(panel.dropped for panel in views) + (plan.dropped if plan else 0)
+        sheets = 1
+        for _ in range(3):  # the notes say how many sheets there are, and may take another line for it
+            notes = noting.notes(
+                found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH, dropped=dropped, sheets=sheets
+            )
+            arranged = arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed)
+            if arranged is None or arranged.sheets == sheets:
+                break
+            sheets = arranged.sheets
+        if arranged is not None:
+            return arranged
+    raise AssertionError("what fits without marks fits with marks in the same room")
 
 
 def _bare(found: Contents, print_: Print) -> list[Panel]:
@@ -132,7 +136,7 @@ def _bare(found: Contents, print_: Print) -> list[Panel]:
     return panels
 
 
-def _panels(found: Contents, print_: Print, *, marks: bool) -> tuple[list[Panel], Panel | None]:
+def _panels(found: Contents, print_: Print, *, marks: Marks) -> tuple[list[Panel], Panel | None]:
     views = [elevation(one, print_, marks=marks) for one in found.subjects]
     plan = None if found.site is None else planning.plan(found.site, print_, marks=marks)
     return views, plan

@@ -9,7 +9,7 @@ import numpy as np
 from export.picture import labels, symbols
 from export.picture.dimensions import Measure, measures, outside
 from export.picture.ground import HEAVY, LIGHT, TEXT, Ground
-from export.picture.inside import inside
+from export.picture.inside import column, inside
 from export.picture.labels import Wanted
 from export.picture.looks import LOOKS
 from export.picture.sizes import Sizes
@@ -34,9 +34,13 @@ from geom.result import Label, Piece, View
 
 _CELL = 0.2  # of the grid, in heights of the notes' text: half a millimetre on paper
 _MARGIN = 14.0  # round a view where marks may still stand, in the same
+_MOST_ASIDE = 6  # dimensions in a column beside a view; more are no longer told apart
 _END = 1e-4  # m: a line that ends within this of a support is held there
 _FEW = 40  # marks of a view that are placed before the dimensions inside it
 _MOST_CELLS = 4e6  # of one grid: a sheet of A0 at half a millimetre
+
+
+Marks = Literal["free", "within", "none"]
 
 
 @dataclass(frozen=True)
@@ -97,8 +101,11 @@ def labels_of(piece: Piece) -> tuple[Label, ...]:
     return tuple(found.values())
 
 
-def elevation(subject: Subject, print_: Print, *, marks: bool = True) -> Panel:
-    """Return a view as it is printed, its title under it; without marks to see what room it takes."""
+def elevation(subject: Subject, print_: Print, *, marks: Marks = "free") -> Panel:
+    """Return a view as it is printed, its title under it.
+
+    Marks may stand round it ("free"), only in the room it takes without them ("within"), or are left out ("none").
+    """
     per, sizes = print_.per, print_.sizes
     drawn = Drawn()
     geometry = printed(subject.seen.box, per)
@@ -107,9 +114,11 @@ def elevation(subject: Subject, print_: Print, *, marks: bool = True) -> Panel:
     held = _with_levels(subject.measures, core, per, sizes)
     rows = outside(subject.measures, per, held, sizes)
     drawn.dimensions += rows.placed
-    if marks:
+    taken = around(rows.box, *labels.reserved(wanted, sizes))
+    if marks != "none":
         beside = [measure for measure in subject.measures if not measure.in_rows(per, held, sizes)]
-        _mark(subject, wanted, beside, ground_of(rows.box, sizes), print_, drawn)
+        ground = ground_of(taken, sizes, free=marks == "free")
+        _mark(subject, wanted, beside, ground, print_, drawn)
     group = Group(
         subject.piece.mark, subject.seen.strokes, subject.seen.links, tuple(drawn.paths), tuple(drawn.circles),
         tuple(drawn.texts),
@@ -117,7 +126,15 @@ def elevation(subject: Subject, print_: Print, *, marks: bool = True) -> Panel:
     kind: Literal["plan", "elevation"] = "plan" if is_plan(subject.view.frame) else "elevation"
     name = subject.piece.mark if subject.view is subject.piece.views[0] else f"{subject.piece.mark} {subject.view.name}"
     panel = Panel(
-        name, kind, per, (group,), tuple(drawn.dimensions), (), core, around(core, drawn.box), dropped=drawn.dropped
+        name,
+        kind,
+        per,
+        (group,),
+        tuple(drawn.dimensions),
+        (),
+        core,
+        around(core, taken, drawn.box),
+        dropped=drawn.dropped,
     )
     return _titled(panel, subject, print_)
 
@@ -216,7 +233,10 @@ def _mark(
         drawn.texts += placed.texts
         drawn.paths += placed.paths
         drawn.circles += placed.circles
-    drawn.dropped = within.dropped + first.dropped + rest.dropped
+    # a few there was no room for where they belong stand in a column beside the view
+    aside = within.left if ground.wide and len(within.left) <= _MOST_ASIDE else []
+    drawn.dimensions += column(aside, around(printed(subject.seen.box, print_.per), drawn.box), print_.sizes)
+    drawn.dropped = len(within.left) - len(aside) + first.dropped + rest.dropped
 
 
 def _titled(panel: Panel, subject: Subject, print_: Print) -> Panel:
@@ -248,12 +268,12 @@ def printed(box: Box, per: float) -> Box:
     return (box[0] / per, box[1] / per, box[2] / per, box[3] / per)
 
 
-def ground_of(box: Box, sizes: Sizes) -> Ground:
-    """Return an empty ground over a box and the margin where marks may stand."""
-    margin = _MARGIN * sizes.note
+def ground_of(box: Box, sizes: Sizes, *, free: bool) -> Ground:
+    """Return an empty ground over a box, and where marks are free a margin round it."""
+    margin = _MARGIN * sizes.note if free else 0.0
     box = (box[0] - margin, box[1] - margin, box[2] + margin, box[3] + margin)
     cell = max(_CELL * sizes.note, float(np.sqrt((box[2] - box[0]) * (box[3] - box[1]) / _MOST_CELLS)))
-    return Ground(box, cell)
+    return Ground(box, cell, wide=free)
 
 
 def enter(ground: Ground, shown: Seen, drawn: Drawn, per: float) -> None:

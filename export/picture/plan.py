@@ -8,7 +8,7 @@ import numpy as np
 from export.picture import labels, symbols
 from export.picture.labels import Wanted
 from export.picture.looks import LOOKS
-from export.picture.panels import Drawn, Print, enter, ground_of, printed, with_title
+from export.picture.panels import Drawn, Marks, Print, enter, ground_of, printed, with_title
 from export.picture.sizes import Sizes
 from export.picture.values import Floats, Group, Panel, Text, around
 from export.picture.views import Drawing, Seen, is_plan, seen_on_plan
@@ -37,27 +37,30 @@ def wanted(result: Result) -> bool:
     return not (len(result.pieces) == 1 and any(is_plan(view.frame) for view in result.pieces[0].views))
 
 
-def plan(site: Site, print_: Print, *, marks: bool = True) -> Panel:
-    """Return the plan as it is printed; without marks to see what room it takes."""
+def plan(site: Site, print_: Print, *, marks: Marks = "free") -> Panel:
+    """Return the plan as it is printed; marks as for an elevation."""
     per, sizes = print_.per, print_.sizes
     core = printed(around(*(one.box for one in site.seen)), per)
-    ground = ground_of(core, sizes)
     drawn = [Drawn() for _ in site.pieces]
-    for mine, shown, held in zip(drawn, site.seen, site.held, strict=True):
+    for mine, held in zip(drawn, site.held, strict=True):
         for at in held.values():
             mine.paths += symbols.held_point(at / per, sizes)
-        enter(ground, shown, mine, per)
     core = around(core, *(mine.box for mine in drawn))
+    wanted_marks = [*_names(site, per), *_supports(site, print_)]
+    taken = around(core, *labels.reserved(wanted_marks, sizes))
     loose = Drawn()
-    if marks:
-        placed = labels.place([*_names(site, per), *_supports(site, print_)], ground, sizes)
+    if marks != "none":
+        ground = ground_of(taken, sizes, free=marks == "free")
+        for mine, shown in zip(drawn, site.seen, strict=True):
+            enter(ground, shown, mine, per)
+        placed = labels.place(wanted_marks, ground, sizes)
         loose = Drawn(placed.paths, placed.circles, placed.texts, dropped=placed.dropped)
     groups = [
         Group(piece.mark, shown.strokes, shown.links, tuple(mine.paths))
         for piece, shown, mine in zip(site.pieces, site.seen, drawn, strict=True)
     ]
     groups.append(Group("", paths=tuple(loose.paths), circles=tuple(loose.circles), texts=tuple(loose.texts)))
-    panel = Panel("plan", "plan", per, tuple(groups), core=core, box=around(core, loose.box), dropped=loose.dropped)
+    panel = Panel("plan", "plan", per, tuple(groups), core=core, box=around(taken, loose.box), dropped=loose.dropped)
     return with_title(panel, _title(sizes), sizes)
 
 
@@ -93,7 +96,7 @@ def _supports(site: Site, print_: Print) -> Iterable[Wanted]:
     for held in site.held:
         for mark, at in held.items():
             if mark in named:
-                yield Wanted(mark, at / print_.per, "support", clear=0.45 * print_.sizes.symbol)
+                yield Wanted(mark, at / print_.per, "support", clear=0.45 * print_.sizes.symbol, first=(0, 1))
 
 
 def _title(sizes: Sizes) -> list[Text]:
