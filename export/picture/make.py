@@ -16,6 +16,7 @@ from export.picture.wording import Wording
 from geom.result import Result
 
 _SMALLEST = 25.0  # printed mm: once all geometry is smaller, a smaller scale makes no more room for its text
+_MORE_SCALES = 1  # smaller scales looked at for the sake of marks: at still smaller ones they have less room
 _MORE_SHEETS = 1.5  # times the fewest sheets possible: so much a larger scale may cost
 _TITLE_ROOM = 12.0  # at least this much stands under each view, mm: mark and two lines
 _MARKS: tuple[Marks, ...] = ("free", "within")  # tried in turn
@@ -54,17 +55,25 @@ def contents(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> 
 def picture(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> Picture:
     """Return the picture of a result on the sheet its design names.
 
-    The scale is the largest at which everything fits one sheet. Where no scale brings that about, as the text of many
-    pieces takes more than a sheet whatever the scale, it is the largest at which that takes hardly more sheets than any
-    scale does.
+    The scale is the largest at which everything fits one sheet; where some mark finds no room at that, the next one is
+    looked at, and taken if it has room for all. Where no scale brings that about, as the text of many pieces takes more
+    than a sheet whatever the scale, it is the largest at which that takes hardly more sheets than any scale does.
     """
     found = contents(result, drawing, extra=extra)
     on = sheet(result.setting.drawing.sheet)
     candidates = list(_candidates(found))
+    best: Picture | None = None
+    left = 0
     for scale in candidates:
-        if _unmarked(found, scale, on) is not None:
-            return _picture(_marked(found, scale, on), scale, on)
-    return _on_sheets(found, candidates, on)
+        if _unmarked(found, scale, on) is None:
+            continue
+        shown = _picture(_marked(found, scale, on), scale, on)
+        if best is None or shown.dropped == 0:
+            best = shown
+        left += 1
+        if best.dropped == 0 or left > _MORE_SCALES:
+            break
+    return best or _on_sheets(found, candidates, on)
 
 
 def _on_sheets(found: Contents, candidates: Sequence[Scale], on: Sheet) -> Picture:

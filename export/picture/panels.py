@@ -114,29 +114,33 @@ def elevation(subject: Subject, print_: Print, *, marks: Marks = "free") -> Pane
     held = _with_levels(subject.measures, core, per, sizes)
     rows = outside(subject.measures, per, held, sizes)
     drawn.dimensions += rows.placed
-    taken = around(rows.box, *labels.reserved(wanted, sizes))
+    lines = _title(subject, core, print_)
+    over_title = (core[0], core[1], core[0] + max(line.box[2] for line in lines), core[1])
+    taken = around(rows.box, over_title, *labels.reserved(wanted, sizes))
     if marks != "none":
         beside = [measure for measure in subject.measures if not measure.in_rows(per, held, sizes)]
         ground = ground_of(taken, sizes, free=marks == "free")
         _mark(subject, wanted, beside, ground, print_, drawn)
-    group = Group(
-        subject.piece.mark, subject.seen.strokes, subject.seen.links, tuple(drawn.paths), tuple(drawn.circles),
-        tuple(drawn.texts),
-    )  # fmt: skip
-    kind: Literal["plan", "elevation"] = "plan" if is_plan(subject.view.frame) else "elevation"
-    name = subject.piece.mark if subject.view is subject.piece.views[0] else f"{subject.piece.mark} {subject.view.name}"
-    panel = Panel(
-        name,
-        kind,
+    return with_title(_panel(subject, drawn, per, core, taken), lines, sizes)
+
+
+def _panel(subject: Subject, drawn: Drawn, per: float, core: Box, taken: Box) -> Panel:
+    piece, view, seen_ = subject.piece, subject.view, subject.seen
+    return Panel(
+        piece.mark if view is piece.views[0] else f"{piece.mark} {view.name}",
+        "plan" if is_plan(view.frame) else "elevation",
         per,
-        (group,),
+        (Group(piece.mark, seen_.strokes, seen_.links, tuple(drawn.paths), tuple(drawn.circles), tuple(drawn.texts)),),
         tuple(drawn.dimensions),
-        (),
-        core,
-        around(core, taken, drawn.box),
+        core=core,
+        box=around(core, taken, drawn.box),
         dropped=drawn.dropped,
     )
-    return _titled(panel, subject, print_)
+
+
+def _title(subject: Subject, core: Box, print_: Print) -> list[Text]:
+    room = core[2] - core[0]
+    return title(subject.piece, subject.view, print_.wording, print_.sizes, room=room, cautions=subject.cautions)
 
 
 def _symbols(subject: Subject, geometry: Box, print_: Print, drawn: Drawn) -> list[Wanted]:
@@ -234,18 +238,13 @@ def _mark(
         drawn.paths += placed.paths
         drawn.circles += placed.circles
     # a few there was no room for where they belong stand in a column beside the view
-    aside = within.left if ground.wide and len(within.left) <= _MOST_ASIDE else []
-    drawn.dimensions += column(aside, around(printed(subject.seen.box, print_.per), drawn.box), print_.sizes)
+    aside = column(within.left, around(printed(subject.seen.box, print_.per), drawn.box), print_.sizes)
+    if len(aside) > _MOST_ASIDE or not (
+        ground.wide or max((one.box[2] for one in aside), default=0.0) <= ground.box[2]
+    ):
+        aside = []
+    drawn.dimensions += aside
     drawn.dropped = len(within.left) - len(aside) + first.dropped + rest.dropped
-
-
-def _titled(panel: Panel, subject: Subject, print_: Print) -> Panel:
-    sizes = print_.sizes
-    lines = title(
-        subject.piece, subject.view, print_.wording, sizes,
-        room=panel.core[2] - panel.core[0], cautions=subject.cautions,
-    )  # fmt: skip
-    return with_title(panel, lines, sizes)
 
 
 def with_title(panel: Panel, lines: Sequence[Text], sizes: Sizes) -> Panel:

@@ -5,7 +5,7 @@ point p lie at g / per + at and p + at on the print. The one place where either 
 draws it.
 """
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 from typing import Literal
 
 import numpy as np
@@ -204,7 +204,11 @@ class Picture:
     box: Box
     sheets: int = 1
     room: tuple[float, float] = (0.0, 0.0)  # drawing space of a sheet
-    cautions: tuple[str, ...] = field(default=())
+
+    @property
+    def dropped(self) -> int:
+        """How many marks and dimensions there was no room for."""
+        return sum(panel.dropped for panel in self.panels)
 
 
 def xy(x: float, y: float) -> Floats:
