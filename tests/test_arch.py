@@ -111,19 +111,19 @@ def test_a_steep_parallel_agrees_with_thirty_digit_arithmetic() -> None:
     assert ring.ends["extrados"] == pytest.approx((float(u0), float(u1)), rel=1e-13)
 
 
-@pytest.mark.parametrize("rise", [1e-7, 1e-4, 1e-2, 1.0, 10.0, 1e3])
+@pytest.mark.parametrize("rise", [1e-6, 1e-4, 1e-2, 1.0, 10.0, 1e3])
 def test_flat_and_steep_arches_agree_with_thirty_digit_arithmetic(rise: float) -> None:
     with mp.workdps(30):
         start = math.asinh(4 * rise)
         u = mp.findroot(lambda v: 2 * mp.sinh(v / 2) ** 2 / (2 * v) - mp.mpf(rise), start * (1.0 if rise < 1 else 1.2))
         parameter = 1 / (2 * u)
-    ring = stand(1.0, 0.0, Rise(rise), Profile(1e-9, foot="radial"))
+    ring = stand(1.0, 0.0, Rise(rise), Profile(1e-5, foot="radial"))
     assert ring.shape.scale == pytest.approx(float(parameter), rel=1e-12)
 
 
 def test_a_flat_arch_tends_to_the_parabola() -> None:
     # rise -> span^2 / 8 a
-    ring = stand(1.0, 0.0, Rise(1e-5), Profile(1e-7, foot="radial"))
+    ring = stand(1.0, 0.0, Rise(1e-5), Profile(1e-5, foot="radial"))
     assert ring.shape.scale == pytest.approx(1.0 / 8e-5, rel=1e-9)
 
 
@@ -253,7 +253,8 @@ def test_the_greatest_thickness_is_where_the_intrados_begins_to_fold(curve: Line
     assert ring.crown_radius == pytest.approx(0.0, abs=1e-5 * most)
     error = refusal(2.0, 0.0, Rise(2.5), Profile(most * (1 + 1e-6), curve, face))
     assert error.key == "thickness"
-    assert f"{most:.4g}" in str(error)
+    said = float(str(error).split("less than ")[1].split(" m")[0])
+    assert most * (1 - 1e-3) < said <= most
 
 
 def test_an_intrados_that_is_the_catenary_itself_never_folds() -> None:
@@ -278,6 +279,13 @@ def test_an_extrados_narrower_than_its_ring_is_refused_for_its_rise() -> None:
         (Through(1.0, 0.25), "through"),
         (Through(2.0, 1.0), "through"),
         (Through(-0.1, 1.0), "through"),
+        (Rise(1e5), "rise"),
+        (Length(1e5), "length"),
+        (Through(1.0, 1e5), "through"),
+        (Length(math.hypot(2.0, 0.5) * (1 + 1e-15)), "length"),
+        (Through(1.0, 0.25 + 1e-9), "through"),
+        (Scale(1e-3), "thrust"),
+        (Scale(1e9), "thrust"),
     ],
 )
 def test_a_fact_that_no_arch_between_the_springings_has_is_refused_by_its_key(fact: Fact, key: str) -> None:

@@ -13,8 +13,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from geom.arch.cuts import Bodies, Cuts, bodies, cut, feet, joined
+from geom.arch.refusal import NoArch
 from geom.arch.ring import Ring
-from geom.errors import SolveError
 
 Floats = NDArray[np.float64]
 Indices = NDArray[np.intp]
@@ -121,8 +121,8 @@ def _check(starts: Cuts, ends: Cuts, ring: Ring, count: int, joint: float) -> No
     if np.any(narrow):
         number = int(np.argmax(narrow)) + 1
         face = ring.length("axis") / count
-        raise SolveError(
-            f"joints of {joint:g} m leave nothing of block {number} of {count}, {face:.4g} m of the axis each; "
+        raise NoArch(
+            f"{{}} leaves nothing of block {number} of {count}, each {{}} along the axis; "
             "give thinner joints or fewer blocks",
-            key="joint",
-        )
+            joint, face, key="joint",
+        )  # fmt: skip

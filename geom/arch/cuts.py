@@ -14,8 +14,8 @@ import numpy as np
 from numpy.typing import NDArray
 
 from geom.arch.parallel import Parallel, arc_moments, straight_moments
+from geom.arch.refusal import NoArch
 from geom.arch.ring import Ring
-from geom.errors import SolveError
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int8]
@@ -121,7 +121,7 @@ def _meet(line: Parallel, q: Floats, base: Floats, along: Floats, shift: float) 
         found += step
         if np.all(np.abs(step) <= 1e-14 * (1.0 + np.abs(found))):  # some ten roundings: short is a small difference
             return found
-    raise SolveError("a joint is wider than the ring lets it be; give less", key="joint")
+    raise NoArch("{} is wider than the ring lets a joint be; give less", 2.0 * abs(shift), key="joint")
 
 
 @dataclass(frozen=True)

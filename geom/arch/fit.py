@@ -14,6 +14,7 @@ from dataclasses import dataclass
 import numpy as np
 from scipy.optimize import brentq
 
+from geom.arch.refusal import NoArch
 from geom.arch.shapes import Catenary, Shape
 from geom.errors import SolveError
 
@@ -22,7 +23,11 @@ Family = Callable[[float], Shape]
 _FINE = 4.0 * np.finfo(np.float64).eps  # what brentq may be asked for at most
 _DOUBLINGS = 100  # of the scale over its floor, either way: flatter or steeper than any double tells apart
 _FOLDING = 1e-9  # of the span: a scale that near its floor has no smooth parallel any more
-_STEEPEST = 600.0  # scales in a span: there the rise is 1e127 spans, and not far past it cosh leaves the doubles
+_STEEPEST = 30.0  # scales in a span: there the rise is 5e4 spans
+_FLATTEST = (
+    1e6  # spans in a scale: there the rise is an eight-millionth of the span, under what is set out over any span
+)
+_TALLEST = 1e3  # chords in a rise, a length or a passing point's height: past it nothing is built
 
 
 @dataclass(frozen=True)
@@ -56,8 +61,10 @@ class Scale:
 
 Fact = Rise | Length | Through | Scale
 
+KEYS: dict[type[Fact], str] = {Rise: "rise", Length: "length", Through: "through", Scale: "thrust"}
 
-class Folds(SolveError):
+
+class Folds(NoArch):
     """No member of the family is smooth enough: the parallel asked for would fold before the fact is met."""
 
 
@@ -127,6 +134,7 @@ def fit(
         If the fact can only be met by a parallel that folds.
     """
     if isinstance(fact, Scale):
+        _check_scale(span, fact)
         return fit_chord(family(fact.value), offset + share * fact.value, span, level)
     _check(span, level, fact)
     floor = max(0.0, -offset / (1.0 + share)) if share > -1.0 else 0.0  # from where on the parallel does not fold
@@ -141,39 +149,52 @@ def fit(
     guess = _guess(span, level, fact)
     least = max(_FOLDING * span, span / _STEEPEST - floor)
     low, high = _scale_bracket(shortfall, math.log(max(guess - floor, 0.1 * guess)), math.log(least))
-    return at(_root(shortfall, low, high))
+    found = at(_root(shortfall, low, high))
+    _check_scale(span, fact, found.shape.scale)
+    return found
+
+
+def _check_scale(span: float, fact: Fact, scale: float = math.nan) -> None:
+    if isinstance(fact, Scale):
+        scale = fact.value
+    key = KEYS[type(fact)]
+    if not scale <= _FLATTEST * span:
+        raise NoArch("makes an arch too flat to be told from a straight line; give more of a curve", key=key)
+    if scale < span / _STEEPEST:
+        raise NoArch("makes an arch too steep to be built; give less height for the span", key=key)
 
 
 def _check(span: float, level: float, fact: Fact) -> None:
     chord = math.hypot(span, level)
+    if not isinstance(fact, Scale) and _target(fact) > _TALLEST * chord:
+        text = "{} is over a thousand times the distance of the springings; give less"
+        raise NoArch(text, _target(fact), key=KEYS[type(fact)])
     if isinstance(fact, Rise) and fact.value <= abs(level):
-        raise SolveError(
-            f"a crown {fact.value:g} m over the lower springing is not over the other, {abs(level):g} m up; "
-            f"give more than {abs(level):g} m",
-            key="rise",
-        )
+        raise NoArch(
+            "{} over the lower springing is not over the other one, {} up; give more than {}",
+            fact.value, abs(level), abs(level), key="rise",
+        )  # fmt: skip
     if isinstance(fact, Length) and fact.value <= chord:
-        raise SolveError(
-            f"{fact.value:g} m is not longer than the {chord:g} m between the springings; give more than {chord:g} m",
-            key="length",
-        )
+        raise NoArch(
+            "{} is not longer than the {} between the springings; give more than {}",
+            fact.value, chord, chord, key="length",
+        )  # fmt: skip
     if isinstance(fact, Through):
         _check_through(span, level, fact)
 
 
 def _check_through(span: float, level: float, fact: Through) -> None:
     if not 0.0 < fact.x < span:
-        raise SolveError(
-            f"a point {fact.x:g} m along is not between the springings; give one at over 0 m and under {span:g} m",
-            key="through",
-        )
+        raise NoArch(
+            "a point {} along is not between the springings; give one at over 0 and under {}",
+            fact.x, span, key="through",
+        )  # fmt: skip
     chord = level * fact.x / span
     if fact.z <= chord:
-        raise SolveError(
-            f"a point {fact.z:g} m over the first springing is not above the line between the springings; "
-            f"give more than {chord:g} m there",
-            key="through",
-        )
+        raise NoArch(
+            "a point {} over the first springing is not above the straight line between both; give more than {} there",
+            fact.z, chord, key="through",
+        )  # fmt: skip
 
 
 def _target(fact: Fact) -> float:

@@ -15,8 +15,9 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from geom.arch.fit import Fact, Family, Fit, Folds, Length, Rise, fit
+from geom.arch.fit import KEYS, Fact, Family, Fit, Folds, fit
 from geom.arch.parallel import Parallel, arc_moments, straight_moments
+from geom.arch.refusal import NoArch, under
 from geom.arch.shapes import Catenary, Shape
 from geom.errors import SolveError
 
@@ -24,6 +25,7 @@ Floats = NDArray[np.float64]
 LineName = Literal["intrados", "axis", "extrados"]
 Foot = Literal["level", "radial"]
 
+_THICKNESS = 1e6  # thicknesses in a span, or the reverse: past it rounding shows in areas, and nothing is built
 _HALVES: dict[LineName, float] = {"intrados": -0.5, "axis": 0.0, "extrados": 0.5}  # of the thickness, from the axis
 
 
@@ -64,12 +66,14 @@ class Profile:
 class Ring:
     """A ring in place. `ends` holds the parameters (``from``, ``to``) at which each line meets the feet.
 
-    With a level foot the lines end at different parameters, with a radial one all at the same.
+    With a level foot the lines end at different parameters, with a radial one all at the same. `crown` (x, z) is that
+    of the line with the shape, `springing` (x, z) the ``to`` springing of the face line, m.
     """
 
     profile: Profile
     shape: Shape
     crown: tuple[float, float]
+    springing: tuple[float, float]
     ends: dict[LineName, tuple[float, float]]
 
     def line(self, name: LineName) -> Parallel:
@@ -99,7 +103,13 @@ class Ring:
 
     def feet(self, name: LineName) -> Floats:
         """Return the two ends (2, 2) of a line, m."""
-        return self.line(name).point(np.array(self.ends[name]))
+        feet = self.line(name).point(np.array(self.ends[name]))
+        # what is known without rounding is said without it
+        if name == self.profile.face:
+            return np.array([(0.0, 0.0), self.springing])
+        if self.profile.foot == "level":
+            feet[:, 1] = 0.0, self.springing[1]
+        return feet
 
     def span(self, name: LineName) -> float:
         """Return the distance on plan between the ends of a line, m."""
@@ -118,7 +128,9 @@ class Ring:
 
     def sample(self, name: LineName, within: float) -> Floats:
         """Return a polyline (n, 2) of a line from foot to foot, nowhere more than `within` (m) off it."""
-        return self.line(name).sample(*self.ends[name], within)
+        points = self.line(name).sample(*self.ends[name], within)
+        points[[0, -1]] = self.feet(name)
+        return points
 
     @property
     def crown_radius(self) -> float:
@@ -169,6 +181,9 @@ def stand(span: float, level: float, fact: Fact, profile: Profile) -> Ring:
     SolveError
         If there is no such arch; names the key and what would be right.
     """
+    if not span / _THICKNESS <= profile.thickness <= span * _THICKNESS:
+        text = "{} is no thickness of an arch over {}; give from {} to {}"
+        raise NoArch(text, profile.thickness, span, span / _THICKNESS, span * _THICKNESS, key="thickness")
     try:
         fitted = fit(span, level, fact, family=profile.family, offset=profile.offset(profile.face))
     except Folds as error:
@@ -176,7 +191,7 @@ def stand(span: float, level: float, fact: Fact, profile: Profile) -> Ring:
     share = -profile.share("intrados")
     if share * profile.thickness >= fitted.shape.least_radius:
         raise _too_thick(span, level, fact, profile)
-    return _placed(fitted, level, profile)
+    return _placed(fitted, (span, level), profile)
 
 
 def greatest_thickness(span: float, level: float, fact: Fact, profile: Profile) -> float:
@@ -194,30 +209,29 @@ def greatest_thickness(span: float, level: float, fact: Fact, profile: Profile) 
     return of_scale * fitted.shape.scale
 
 
-def _too_thick(span: float, level: float, fact: Fact, profile: Profile) -> SolveError:
+def _too_thick(span: float, level: float, fact: Fact, profile: Profile) -> NoArch:
     try:
         most = greatest_thickness(span, level, fact, profile)
     except SolveError:
         most = 0.0
     if not 0.0 < most < float("inf"):
-        key = "rise" if isinstance(fact, Rise) else "length" if isinstance(fact, Length) else "through"
-        return SolveError("so steep an arch cannot be made of so narrow a ring; give less", key=key)
-    return SolveError(
-        f"{profile.thickness:g} m folds the intrados, which bends more sharply than that at the crown; "
-        f"give less than {most:.4g} m, or a flatter arch",
-        key="thickness",
-    )
+        text = "makes the arch steeper than a ring {} thick can be; give less"
+        return NoArch(text, profile.thickness, key=KEYS[type(fact)])
+    return NoArch(
+        "{} folds the intrados, which bends too sharply at the crown for it; give less than {}, or a flatter arch",
+        profile.thickness, under(most), key="thickness",
+    )  # fmt: skip
 
 
-def _placed(fitted: Fit, level: float, profile: Profile) -> Ring:
+def _placed(fitted: Fit, springing: tuple[float, float], profile: Profile) -> Ring:
     face, shape = profile.face, fitted.shape
     start = shape.point(fitted.start) + fitted.offset * shape.normal(fitted.start)
     crown = (-float(start[0]), -float(start[1]))
     ends: dict[LineName, tuple[float, float]] = dict.fromkeys(_HALVES, (fitted.start, fitted.end))
     if profile.foot == "level":
-        _check_level_foot(fitted, level, profile)
+        _check_level_foot(fitted, profile)
         ends = {name: ends[name] if name == face else _level_ends(fitted, profile.offset(name)) for name in _HALVES}
-    return Ring(profile, shape, crown, ends)
+    return Ring(profile, shape, crown, springing, ends)
 
 
 def _level_ends(fitted: Fit, offset: float) -> tuple[float, float]:
@@ -227,18 +241,18 @@ def _level_ends(fitted: Fit, offset: float) -> tuple[float, float]:
     return -float(start), float(end)
 
 
-def _check_level_foot(fitted: Fit, level: float, profile: Profile) -> None:
+def _check_level_foot(fitted: Fit, profile: Profile) -> None:
     if not fitted.crown_inside:
-        raise SolveError(
-            "a level foot needs the crown between the springings, and this arch still rises at its upper one; "
-            'give foot = "radial", or more rise',
+        raise NoArch(
+            '"level" needs the crown between the springings, and this arch still rises at its upper one; '
+            'give foot = "radial", or a higher crown',
             key="foot",
         )
     drops = fitted.shape.drop(np.array([fitted.start, fitted.end]), fitted.offset)
     clear = float(np.min(drops)) + profile.offset("intrados") - fitted.offset
     if clear <= 0.0:
-        raise SolveError(
-            f"the intrados stays {-clear:.4g} m under the springing, so that a level foot cuts the ring away; "
-            f'give foot = "radial", more rise, or face = "intrados"',
-            key="foot",
-        )
+        raise NoArch(
+            '"level" would cut the ring away, since its intrados stays {} under a springing; '
+            'give foot = "radial", more rise, or face = "intrados"',
+            -clear, key="foot",
+        )  # fmt: skip

@@ -26,6 +26,7 @@ from scipy.optimize import brentq, linprog
 
 from geom.arch.cuts import Cuts, bodies, cut, feet, joined
 from geom.arch.fit import Scale
+from geom.arch.refusal import NoArch
 from geom.arch.ring import Profile, Ring, stand
 from geom.errors import SolveError
 
@@ -36,7 +37,8 @@ _ROUNDS = 50  # of Dinkelbach, which takes 4 to 8
 _SETTLED = 1e-9  # of the eccentricity over thickness: ten times the tolerance HiGHS can be asked for
 _FEASIBLE = 1e-10  # the least that HiGHS takes
 _FIRST_STEP, _LAST_STEP = 0.7, 1e-6  # of the logarithm of a scale: a doubling, and what no dimension shows
-_LEAST = 1e-6  # of the span: a scale that much over its floor is at it
+_TOO_LITTLE = "is less than any arch {} thick between these springings thrusts; give more"
+_LEAST = 0.035  # of the span: no shape of a scale under a thirtieth is fitted
 
 
 @dataclass(frozen=True)
@@ -110,10 +112,11 @@ def stand_with_thrust(span: float, level: float, horizontal: float, unit_weight:
         If no arch between the springings has it.
     """
     per_metre = unit_weight * profile.thickness
+    floor = max(0.0, profile.thickness * -profile.share("intrados"))  # the scale from which the intrados does not fold
     if profile.curve == "axis":
+        if horizontal <= per_metre * floor:
+            raise NoArch(_TOO_LITTLE, profile.thickness, key="thrust")
         return stand(span, level, Scale(horizontal / per_metre), profile)
-    share = -profile.share("intrados")
-    floor = max(0.0, share * profile.thickness)  # the scale from which the intrados does not fold
 
     def at(log: float) -> Ring:
         return stand(span, level, Scale(floor + float(np.exp(log))), profile)
@@ -122,7 +125,7 @@ def stand_with_thrust(span: float, level: float, horizontal: float, unit_weight:
         return thrust(at(log), unit_weight).horizontal / horizontal - 1.0
 
     guess = np.log(max(horizontal / per_metre - floor, _LEAST * span))
-    low, high = _bracket(shortfall, float(guess), float(np.log(_LEAST * span)))
+    low, high = _bracket(shortfall, float(guess), float(np.log(_LEAST * span)), profile.thickness)
     return at(float(brentq(shortfall, low, high, xtol=1e-13, rtol=1e-14)))
 
 
@@ -253,12 +256,12 @@ def _thrust_of(joints: Joints, state: Floats, unit_weight: float) -> Thrust:
     )
 
 
-def _bracket(rising: Callable[[float], float], guess: float, least: float) -> tuple[float, float]:
+def _bracket(rising: Callable[[float], float], guess: float, least: float, thickness: float) -> tuple[float, float]:
     """Return a bracket of logarithms of scales, none under `least`; arches too flat for their feet bound it above."""
     low, step = max(guess, least), _FIRST_STEP
     while _stands(rising, low) > 0.0:
         if low <= least:
-            raise SolveError("no arch of that thickness thrusts so little; give more", key="thrust")
+            raise NoArch(_TOO_LITTLE, thickness, key="thrust")
         low, step = max(low - step, least), 2.0 * step
     step = _FIRST_STEP
     while step > _LAST_STEP:
@@ -269,7 +272,7 @@ def _bracket(rising: Callable[[float], float], guess: float, least: float) -> tu
             low += step
         else:
             step *= 0.5
-    raise SolveError("no arch between these springings thrusts so much; give less", key="thrust")
+    raise NoArch("is more than any arch that stands on these springings thrusts; give less", key="thrust")
 
 
 def _stands(rising: Callable[[float], float], log: float) -> float:
