@@ -75,7 +75,8 @@ def offsets(draw: st.DrawFn) -> Offset:
 @st.composite
 def sampled(draw: st.DrawFn) -> Sampled:
     curve = draw(catenaries())
-    points, tangents = curve.at(np.linspace(0, curve.length, draw(st.integers(8, 40))))
+    # Chords within 0.05 a of a catenary turn by 0.63 rad at most.
+    points, tangents = curve.at(curve.stations(draw(st.floats(0.002, 0.05)) * curve.parameter))
     return Sampled(points, tangents)
 
 

@@ -51,7 +51,8 @@ def faceted(solid: Manifold) -> Faceted:
     """
     size = float(np.abs(solid.bounding_box()).max())
     # As an original of its own: edges between what was joined from different solids are kept otherwise.
-    mesh = checked(checked(solid, "cutting").as_original().simplify(max(_SHORTEST, _SINGLE * size)), "simplifying").to_mesh()
+    clean = checked(solid, "cutting").as_original().simplify(max(_SHORTEST, _SINGLE * size))
+    mesh = checked(clean, "simplifying").to_mesh()
     vertices = np.asarray(mesh.vert_properties, dtype=np.float64)[:, :3]
     return Faceted(Mesh(vertices, np.asarray(mesh.tri_verts)).scaled(1 / MM))
 
