@@ -10,6 +10,8 @@ from numpy.typing import NDArray
 
 from geom.hang.figures import HangingFigures
 from geom.hang.filling import Shape, dimensions, drawn
+from geom.hang.together import one_solid, worst
+from geom.hang.unfolded import unfolded_solid
 from geom.result import (
     Z_UP,
     Caution,
@@ -26,7 +28,7 @@ from geom.result import (
     View,
     fixed,
 )
-from geom.solids import Links, Solid, Sweep, Union
+from geom.solids import Solid
 
 Floats = NDArray[np.float64]
 
@@ -73,27 +75,17 @@ def gathered(mark: str, bays: Sequence[Piece], wanted: Quantity | None, *, copie
         stocks=bays[0].stocks,
         copies=copies,
         intended=wanted,
-        difference=_worst(bays, wanted),
+        difference=worst(bays, wanted) if wanted is not None else None,
         parts=tuple(bays),
         parts_name="bays",
         facts=_facts(bays, whole, mass),
         lines=tuple(line for bay in bays for line in bay.lines),
         labels=_labels(mark, bays),
-        solids=_one_solid(mark, bays),
+        solids=one_solid(mark, bays),
         cuts=tuple(replace(cut, piece=mark) for bay in bays for cut in bay.cuts),
         pulls=_pulls(mark, bays),
         cautions=_cautions(mark, bays),
     )
-
-
-def _worst(bays: Sequence[Piece], wanted: Quantity | None) -> Quantity | None:
-    """The greatest difference among the bays that were asked for what the run was asked for."""
-    differences = [bay.difference for bay in bays if bay.intended == wanted and bay.difference is not None]
-    return max(differences, key=_size, default=None) if wanted is not None else None
-
-
-def _size(quantity: Quantity) -> float:
-    return abs(quantity.value) if quantity.value is not None else 0.0
 
 
 def _facts(bays: Sequence[Piece], whole: RunFigures, mass: float) -> tuple[Quantity, ...]:
@@ -143,16 +135,6 @@ def _cautions(mark: str, bays: Sequence[Piece]) -> tuple[Caution, ...]:
     )
 
 
-def _one_solid(mark: str, bays: Sequence[Piece]) -> tuple[Solid, ...]:
-    """One solid for the run, since it is one piece."""
-    bodies = [solid for bay in bays for solid in bay.solids]
-    if not bodies:
-        return ()
-    if len(bodies) == 1:
-        return (replace(bodies[0], mark=mark),)
-    return (Solid(mark, sum(solid.volume for solid in bodies), Union(tuple(solid.body for solid in bodies))),)
-
-
 def _elevation(bays: Sequence[Piece]) -> View:
     """Unfold the bays into one plane, in order, so that each is seen true to scale whatever its direction on plan."""
     lines: list[Line] = []
@@ -166,7 +148,7 @@ def _elevation(bays: Sequence[Piece]) -> View:
         end = np.array([figures.span, 0.0, bay.labels[1].at[2]])
         shape = Shape(start, end, figures.parameter, figures.pin_to_pin).unfolded(x)
         lines += drawn(bay.mark, shape)
-        solids += [_unfolded(solid, bay, shape) for solid in bay.solids]
+        solids += [unfolded_solid(solid, bay.frame, shape) for solid in bay.solids]
         bay_dimensions += _bay_dimensions(shape, figures)
         marks += [Label(shape.start, bay.labels[0].text, "support")] if number == 0 else []
         marks.append(Label(shape.end, bay.labels[1].text, "support"))
@@ -186,15 +168,3 @@ def _bay_dimensions(shape: Shape, figures: HangingFigures) -> list[Dimension]:
 def _middle(shape: Shape, figures: HangingFigures) -> Floats:
     place = shape.start + (shape.end - shape.start) * 0.5
     return np.asarray(place - np.array([0.0, 0.0, figures.sag_mid]))
-
-
-def _unfolded(solid: Solid, bay: Piece, shape: Shape) -> Solid:
-    """The same links turned about a plumb line into the view, or the same tube along the unfolded curve."""
-    body = solid.body
-    if isinstance(body, Links):
-        turn = np.stack([bay.frame.along, np.cross(Z_UP, bay.frame.along), Z_UP])
-        places = (body.places - bay.frame.origin) @ turn.T + shape.start
-        return replace(solid, body=replace(body, places=places, turns=turn @ body.turns))
-    if isinstance(body, Sweep):
-        return replace(solid, body=replace(body, curve=shape.curve))
-    return solid

@@ -1,0 +1,58 @@
+"""Where the strands of a row of swags hang: between two rails, round a ring, or between two rings."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal
+
+import numpy as np
+from numpy.typing import NDArray
+
+from geom.curves import Curve
+from geom.hang.rail import Rail
+from geom.result import Line
+
+Floats = NDArray[np.float64]
+
+
+@dataclass(frozen=True, eq=False)
+class Row:
+    """Where the strands of a row hang.
+
+    Parameters
+    ----------
+    between : "rails", "ring" or "rings"
+    starts, ends : ndarray, shape (n, 3), m
+        Of each strand; round a ring each begins where the one before it ends.
+    outlines : tuple of Curve
+        The rails or rings.
+    rail : Rail or None
+        Of a row between rails the one its strands begin at.
+    """
+
+    between: Literal["rails", "ring", "rings"]
+    starts: Floats
+    ends: Floats
+    outlines: tuple[Curve, ...]
+    rail: Rail | None = None
+
+
+def outlines(mark: str, row: Row) -> tuple[Line, ...]:
+    """Return the rails or rings in place."""
+    return tuple(Line("edge", curve, mark) for curve in row.outlines)
+
+
+def every(count: int, most: int) -> int:
+    """Return the round step (1, 2, 5, 10, 20, ...) that picks at most `most` of so many strands."""
+    size = 1
+    while True:
+        for step in (size, 2 * size, 5 * size):
+            if count <= step * most:
+                return step
+        size *= 10
+
+
+def named(count: int, most: int) -> list[int]:
+    """Return the numbers, from 0, of the strands that are marked: every so many from the first on, and the last."""
+    step = every(count, most)
+    return [*range(0, count - step // 2 - 1, step), count - 1]
