@@ -10,6 +10,7 @@ from export.picture.values import Box, Notes, Panel, around, shifted
 
 _TENTH = 0.1  # of the larger of two pieces: the least distance between them, if that is more than the text's
 _BETWEEN = 2.0  # between all that is printed of two views, in heights of the notes' text
+_LAST_ROWS = 3  # so many rows, or all of them, are tried beside the notes
 _FEED = 40.0  # between sheets, in heights of the notes' text, when one is not enough
 
 
@@ -50,22 +51,29 @@ class _Row:
 def arrange(views: Sequence[Panel], foot: Foot, sheet: Sheet, sizes: Sizes, *, feed: bool = False) -> Arranged | None:
     """Return views, plan and notes in place on a sheet, or None where they do not fit it.
 
-    Rows take the sheet's whole width; where that leaves no height for the notes, the last rows and the plan stand to
-    the right of these. With `feed` as many sheets are taken as it takes, one under another; then None only where one
-    view is larger than one.
+    Rows take the sheet's whole width, the plan stands under them or to the right of the notes, whichever fills the
+    sheet more evenly; where there is no height for that, the last rows stand to the right of the notes too. With `feed`
+    as many sheets are taken as it takes, one under another; then None only where one view is larger than one.
     """
     rows = list(_rows(views, sheet.width, sizes))
     if any(row.box[2] - row.box[0] > sheet.width for row in rows):
         return None
     beside = sheet.width - (foot.notes.box[2] - foot.notes.box[0]) - sizes.apart
-    options = [rows] if feed else [rows[:whole] for whole in range(len(rows), -1, -1)]
+    options = [len(rows)] if feed else sorted({0, *range(max(0, len(rows) - _LAST_ROWS), len(rows) + 1)}, reverse=True)
     for whole in options:
-        rest = views[sum(len(row.panels) for row in whole) :]
-        for narrow in (sheet.width, beside) if not rest else (beside,):
-            arranged = _arranged(whole, rest, foot, (sheet, narrow), sizes, feed=feed)
-            if arranged is not None:
-                return arranged
+        rest = views[sum(len(row.panels) for row in rows[:whole]) :]
+        widths = (beside,) if rest else (sheet.width, beside)
+        found = [_arranged(rows[:whole], rest, foot, (sheet, narrow), sizes, feed=feed) for narrow in widths]
+        fitting = [one for one in found if one is not None]
+        if fitting:
+            return min(fitting, key=lambda one: _fullness(one, sheet))
     return None
+
+
+def _fullness(arranged: Arranged, sheet: Sheet) -> float:
+    """How much of the sheet's width or height is taken, the larger: the less, the better balanced."""
+    left, bottom, right, top = arranged.box
+    return max((right - left) / sheet.width, (top - bottom) / sheet.height)
 
 
 def _arranged(

@@ -13,7 +13,7 @@ from export.picture.values import Box, Floats, Path, Placed, Text, corners_of, x
 
 _LOOK = LOOKS["dimension"]
 _SLIDES = (0.0, 0.15, -0.15, 0.3, -0.3)  # of the text's middle along the line, in its length
-_RINGS = (2.0, 3.5, 5.0, 7.0, 10.0)  # how far off a text with a leader is tried, in its heights
+_RINGS = (2.0, 3.5, 5.0, 7.0, 10.0, 14.0, 18.0)  # how far off a text with a leader is tried, in its heights
 _WAYS = 16
 _DROPS = (1.6, -1.6, 2.6, 4.0, -3.0, 5.5, 7.0, 9.0, 12.0)  # of a level's text under its point, in its heights
 _LEANS = (0.0, 1.0, -1.0, 2.5, -2.5)  # of its leader to the side, in the same

@@ -71,12 +71,13 @@ def _subject(result: Result, number: int, wording: Wording) -> Subject:
 def _telling(found: Sequence[Measure]) -> list[Measure]:
     """The dimensions that tell the shape: the widest (span), the sag or rise, the lowest level."""
     told: list[Measure] = []
-    level = [one for one in found if one.kind == "horizontal"]
+    named = [one for one in found if one.says] or list(found)
+    level = [one for one in named if one.kind == "horizontal"]
     told += [max(level, key=lambda one: one.value)] if level else []
-    upright = [one for one in found if one.kind == "vertical" and one.side == "inside"]
-    upright = upright or [one for one in found if one.kind == "vertical"]
+    upright = [one for one in named if one.kind == "vertical" and one.side == "inside"]
+    upright = upright or [one for one in named if one.kind == "vertical"]
     told += [max(upright, key=lambda one: one.value)] if upright else []
-    levels = [one for one in found if one.kind == "level"]
+    levels = [one for one in named if one.kind == "level"]
     told += [min(levels, key=lambda one: one.value)] if levels else []
     return told
 

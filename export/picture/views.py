@@ -11,7 +11,7 @@ from geom.arcfit import fit_arcs
 from geom.curves import Curve
 from geom.errors import SolveError
 from geom.result import Frame, Line, Piece, View
-from geom.solids import Balls, Bars, Body, Solid, Union
+from geom.solids import Balls, Bars, Body, Prism, Solid, Union
 from geom.solids import Links as LinkBody
 
 # Points nearer than this are one (m): a tenth of what any shop sees at any scale, far over rounding of coordinates.
@@ -63,8 +63,20 @@ def seen_on_plan(piece: Piece, frame: Frame, drawing: Drawing) -> Seen:
     ranked = sorted(
         (line for line in lines_of(piece) if line.role in STRENGTH), key=lambda line: STRENGTH.index(line.role)
     )
-    strokes = tuple(_strokes(ranked, frame, Drawing(drawing.within), across_layers=True))
+    strokes = (*_strokes(ranked, frame, Drawing(drawing.within), across_layers=True), *_thickness(piece, frame))
     return Seen(strokes, (), _box(strokes, ()))
+
+
+def _thickness(piece: Piece, frame: Frame) -> Iterable[Stroke]:
+    """The outline from above of what is carried straight into the depth: lines in one plane do not show it."""
+    import shapely
+
+    prisms = [body for body in bodies(solids_of(piece)) if isinstance(body, Prism)]
+    if prisms:
+        faces = [points for body in prisms for points in (body.outline, body.outline + body.depth)]
+        outline = shapely.convex_hull(shapely.MultiPoint(frame.flat(np.concatenate(faces))))
+        if isinstance(outline, shapely.Polygon):
+            yield Stroke(look("edge"), np.asarray(outline.exterior.coords)[:-1], closed=True)
 
 
 def is_plan(frame: Frame) -> bool:
