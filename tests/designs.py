@@ -90,3 +90,20 @@ def in_unit(text: str, unit: str, **drawing: str) -> str:
     title, rest = text.split("unit", 1)
     line, rest = rest.split("\n", 1)
     return f'{title}unit{line}\n[drawing]\nunit = "{unit}"\n{keys}{rest}'
+
+
+ARCH = """
+title = "Garden arch"
+unit = "mm"
+[[arch]]
+mark = "A1"
+from = [0, 0, 1150]
+to = [1820, 0, 1150]
+rise = 1240
+face = "intrados"
+thickness = 215
+depth = 440
+material = "brick"
+blocks = 15
+joint = 10
+"""
