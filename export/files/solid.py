@@ -13,7 +13,8 @@ from export.printing.prepare import Printed, Wishes, prepared
 from export.stl import solid_origin, solid_stl
 from export.stl_check import expected_size, verify_stl
 from geom.curves import Polyline
-from geom.result import Caution, Piece, Result
+from geom.result import Caution, Result
+from geom.setting.options import Print
 from geom.solids import Body, Links, Solid, Sweep, Union
 
 MOST_REAL_LINKS = 2000
@@ -60,18 +61,18 @@ def _within(result: Result, choices: Choices) -> float:
     return float(choices.within or result.setting.drawing.within)
 
 
-def _solids(result: Result, choices: Choices) -> Iterator[tuple[Piece, Solid]]:
+def _solids(result: Result, choices: Choices) -> Iterator[Solid]:
     tubes = _too_many(result, choices)
     for piece in result.pieces:
         for solid in piece.solids:
             body = as_tubes(solid.body) if tubes else solid.body
-            yield piece, replace(solid, body=body, volume=body.volume if body is not solid.body else solid.volume)
+            yield replace(solid, body=body, volume=body.volume if body is not solid.body else solid.volume)
 
 
-def _printed(result: Result, choices: Choices) -> Iterator[tuple[Piece, Solid, Printed]]:
+def _printed(result: Result, choices: Choices) -> Iterator[tuple[Solid, Printed]]:
     wishes, within = _wishes(result), _within(result, choices)
-    for piece, solid in _solids(result, choices):
-        yield piece, solid, prepared(solid, wishes, within)
+    for solid in _solids(result, choices):
+        yield solid, prepared(solid, wishes, within)
 
 
 def cautions(result: Result, choices: Choices) -> Iterator[Caution]:
@@ -85,14 +86,24 @@ def cautions(result: Result, choices: Choices) -> Iterator[Caution]:
             "a limit of this program",
         )
     if result.setting.prints:
-        for piece, _, printed in _printed(result, choices):
-            for note in printed.notes:
-                yield Caution("print", piece.mark, f"For printing only: {note}.", "the design's [print] table")
+        yield _print_caution(result.setting.printing)
+
+
+def _print_caution(asked: Print) -> Caution:
+    """What is done to every solid; what it came to for each stands with its file in the figures."""
+    done = [
+        f"they are at 1:{asked.scale:g}" if asked.scale != 1 else "",
+        f"walls under {asked.least_wall * 1e3:g} mm are thickened to it" if asked.least_wall else "",
+        f"links are joined by {asked.gap * 1e3:g} mm of overlap" if asked.links == "joined" else "",
+        "what is larger than the bed is cut up" if asked.bed else "",
+    ]
+    said = "; ".join(filter(None, done)) or "they are at full size"
+    return Caution("print", "", f"The solids are models for printing and no full-size parts: {said}.", "[print]")
 
 
 def write(result: Result, choices: Choices) -> Iterator[File]:
     """Yield a file for each solid, or for each part of it that fits the printer's bed."""
-    for _, solid, printed in _printed(result, choices):
+    for solid, printed in _printed(result, choices):
         for part in printed.parts:
             yield _file(solid.mark, part.name, part.solid, printed)
 
