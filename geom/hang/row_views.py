@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
-from itertools import pairwise
 
 import numpy as np
 from numpy.typing import NDArray
@@ -12,7 +11,7 @@ from numpy.typing import NDArray
 from geom.curves import Polyline, Segment
 from geom.hang.filling import Shape, dimensions, drawn
 from geom.hang.rail import even
-from geom.hang.row import Row, every, named, outlines
+from geom.hang.row import Row, every, named, outlines, zones
 from geom.hang.unfolded import unfolded_shape, unfolded_solid
 from geom.result import PLAN, Z_UP, Dimension, Frame, Label, Line, Piece, View, fixed
 
@@ -181,10 +180,10 @@ def _depth(strand: _Strand, *, left: bool) -> list[Dimension]:
     level = Dimension("level", strand.lowest, strand.lowest, figures.lowest, f"lowest point of {mark}", "below")
     if abs(figures.level_difference) < SAME and figures.span > 0.0:
         end = strand.shape.start if left else strand.shape.end
-        says = f"sag under chord, {mark}"
+        says = f"sag of {mark}"
         return [Dimension("vertical", end, strand.lowest, figures.sag, says, "left" if left else "right"), level]
     sag = [one for one in dimensions(strand.shape, figures) if one.says == "sag under chord"]
-    return [*(Dimension("vertical", d.p, d.q, d.value, f"sag under chord, {mark}", "inside") for d in sag), level]
+    return [*(Dimension("vertical", d.p, d.q, d.value, f"sag of {mark}", "inside") for d in sag), level]
 
 
 def _along_rail(strands: Sequence[Piece], row: Row) -> View | None:
@@ -215,7 +214,7 @@ def _of_rail(strands: Sequence[Piece], x: Floats, heads: Floats, feet: Floats) -
     low, high = int(np.argmin(feet[:, 2])), int(np.argmax(feet[:, 2]))
     found = [
         Dimension("horizontal", heads[0], heads[-1], float(x[-1]), "rail", "above", 2),
-        *_zones(strands, heads),
+        *zones([strand.stocks[0].name for strand in strands], heads),
         *(
             Dimension("level", feet[n], feet[n], float(feet[n, 2]), f"lowest point of {strands[n].mark}", "below")
             for n in dict.fromkeys((low, high))
@@ -227,21 +226,6 @@ def _of_rail(strands: Sequence[Piece], x: Floats, heads: Floats, feet: Floats) -
         says = f"spacing, {len(steps)} equal"
         found.append(Dimension("horizontal", heads[0], heads[1], float(steps[0]), says, "above", 0))
     return tuple(found)
-
-
-def _zones(strands: Sequence[Piece], heads: Floats) -> list[Dimension]:
-    """Where strands of one stock hang, from the first of them to the last, if there are several stocks."""
-    stocks = [strand.stocks[0].name for strand in strands]
-    starts = [0, *(n for n in range(1, len(stocks)) if stocks[n] != stocks[n - 1]), len(stocks)]
-    if len(starts) == 2:
-        return []
-    return [
-        Dimension(
-            "horizontal", heads[first], heads[after - 1], float(heads[after - 1, 0] - heads[first, 0]),
-            stocks[first], "above", 1,
-        )
-        for first, after in pairwise(starts)
-    ]  # fmt: skip
 
 
 def _flat(x: Floats, z: Floats) -> Floats:

@@ -11,7 +11,7 @@ from numpy.typing import NDArray
 
 from geom.hang.row import Row, named, outlines
 from geom.hang.row_views import kinds, views
-from geom.hang.together import one_solid, said_once, worst
+from geom.hang.together import by_stock, one_solid, one_used, said_once, worst
 from geom.result import (
     Column,
     Label,
@@ -23,7 +23,6 @@ from geom.result import (
     Quantity,
     Table,
     Unit,
-    Used,
     fixed,
 )
 
@@ -80,7 +79,7 @@ def gathered(mark: str, strands: Sequence[Piece], row: Row, wanted: Quantity | N
         views=shown,
         mass=mass,
         figures=whole,
-        used=_used(strands),
+        used=one_used(strands),
         stocks=tuple(stocks.values()),
         copies=copies,
         intended=wanted,
@@ -91,7 +90,7 @@ def gathered(mark: str, strands: Sequence[Piece], row: Row, wanted: Quantity | N
         lines=(*(line for strand in strands for line in strand.lines), *outlines(mark, row)),
         labels=_labels(strands, row),
         solids=one_solid(mark, strands),
-        tables=(_table(mark, strands, row), _stock_table(mark, strands)),
+        tables=(_table(mark, strands, row), by_stock(mark, strands)),
         cuts=tuple(replace(cut, piece=mark) for strand in strands for cut in strand.cuts),
         pulls=pulls,
         cautions=said_once(mark, strands),
@@ -112,12 +111,6 @@ def _what(strands: Sequence[Piece], row: Row, stocks: Sequence[str], *, alike: b
         "ring": f"ring of {count} swags{drawn} of {of}",
         "rings": f"{count} drapes between two rings,{drawn} of {of}",
     }[row.between]
-
-
-def _used(strands: Sequence[Piece]) -> Used:
-    """What all strands were computed from; of several stocks only their sources."""
-    found = list(dict.fromkeys(strand.used for strand in strands))
-    return found[0] if len(found) == 1 else Used("; ".join(dict.fromkeys(used.source for used in found)))
 
 
 def _figures(strands: Sequence[Piece], row: Row, pulls: Sequence[Pull]) -> SwagsFigures:
@@ -220,27 +213,6 @@ def _table(mark: str, strands: Sequence[Piece], row: Row) -> Table:
             Column("lowest", _METRES, "lowest point", np.array([one.lowest for one in figures])),
             Column("pull_from", _NEWTONS, "pull at from", np.array([one.pull_from for one in figures])),
             Column("pull_to", _NEWTONS, "pull at to", np.array([one.pull_to for one in figures])),
-        ),
-        mark,
-    )
-
-
-def _stock_table(mark: str, strands: Sequence[Piece]) -> Table:
-    """What is needed of each stock: strands, links, length, mass."""
-    names = list(dict.fromkeys(strand.stocks[0].name for strand in strands))
-    of = np.array([names.index(strand.stocks[0].name) for strand in strands])
-    cuts = [strand.cuts[0] for strand in strands]
-    links = np.array([cut.links or 0 for cut in cuts])
-    length, mass = np.array([cut.cut_length for cut in cuts]), np.array([cut.mass for cut in cuts])
-    counted = np.bincount(of, links)
-    return Table(
-        "strands by stock",
-        (
-            Column("stock", _NONE, "stock", tuple(names)),
-            Column("strands", _NONE, "strands", np.bincount(of).astype(np.int64)),
-            Column("links", _NONE, "links", np.where(counted > 0, counted, np.nan)),
-            Column("cut_length", _METRES, "cut length in all", np.bincount(of, length)),
-            Column("mass", _KILOGRAMS, "mass", np.bincount(of, mass)),
         ),
         mark,
     )

@@ -5,8 +5,12 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import replace
 
-from geom.result import Caution, Piece, Quantity
+import numpy as np
+
+from geom.result import Caution, Column, Piece, Quantity, Table, Unit, Used
 from geom.solids import Solid, Union
+
+_NONE = Unit("")
 
 
 def one_solid(mark: str, parts: Sequence[Piece]) -> tuple[Solid, ...]:
@@ -44,3 +48,30 @@ def worst(parts: Sequence[Piece], wanted: Quantity | None = None) -> Quantity | 
 
 def _size(quantity: Quantity) -> float:
     return abs(quantity.value) if quantity.value is not None else 0.0
+
+
+def one_used(parts: Sequence[Piece]) -> Used:
+    """Return what all parts were computed from; of several stocks only their sources."""
+    found = list(dict.fromkeys(part.used for part in parts))
+    return found[0] if len(found) == 1 else Used("; ".join(dict.fromkeys(used.source for used in found)))
+
+
+def by_stock(mark: str, strands: Sequence[Piece]) -> Table:
+    """Return the table of what is needed of each stock: strands, links, length, mass."""
+    names = list(dict.fromkeys(strand.stocks[0].name for strand in strands))
+    of = np.array([names.index(strand.stocks[0].name) for strand in strands])
+    cuts = [strand.cuts[0] for strand in strands]
+    links = np.array([cut.links or 0 for cut in cuts])
+    length, mass = np.array([cut.cut_length for cut in cuts]), np.array([cut.mass for cut in cuts])
+    counted = np.bincount(of, links)
+    return Table(
+        "strands by stock",
+        (
+            Column("stock", _NONE, "stock", tuple(names)),
+            Column("strands", _NONE, "strands", np.bincount(of).astype(np.int64)),
+            Column("links", _NONE, "links", np.where(counted > 0, counted, np.nan)),
+            Column("cut_length", Unit("m"), "cut length in all", np.bincount(of, length)),
+            Column("mass", Unit("kg"), "mass", np.bincount(of, mass)),
+        ),
+        mark,
+    )

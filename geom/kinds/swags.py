@@ -21,7 +21,8 @@ from geom.kinds.hanging import Hanging, Member
 from geom.registry import Fault, Layout, Outcome, Path, Refusal
 from geom.result import Piece
 from geom.setting.options import Setting
-from geom.setting.stock import Stock, StockRef
+from geom.setting.stock import Stock
+from geom.setting.stock.zones import Zones, by_strand
 from geom.setting.supports import Support
 
 Floats = NDArray[np.float64]
@@ -52,26 +53,6 @@ class Ring(Section):
 
 
 _X, _Y = np.array([1.0, 0.0, 0.0]), np.array([0.0, 1.0, 0.0])
-
-
-class Zone(Section):
-    """So many strands running of one stock."""
-
-    of: StockRef = Field(description='the stock, like "DIN 763-8" or one of your own [stock.NAME]')
-    count: Copies = Field(description="how many strands of it")
-
-
-def _zones(raw: Any, info: ValidationInfo) -> Any:  # noqa: ANN401 - as the file has it
-    """One stock stands for a zone of as many strands as there are, which 0 means."""
-    if isinstance(raw, list):
-        if not raw:
-            raise ValueError("is an empty list; give one stock, or zones [{ of = ..., count = ... }, ...]")
-        return raw
-    stock: Stock = _STOCK.validate_python(raw, context=info.context)
-    return (Zone.model_construct(of=stock, count=0),)
-
-
-_STOCK: TypeAdapter[Stock] = TypeAdapter(StockRef)
 
 
 class Steps(Section):
@@ -127,7 +108,7 @@ class SwagsBase(Member):
     )
     later: ClassVar[frozenset[str]] = LATER
 
-    stock: Annotated[tuple[Zone, ...], BeforeValidator(_zones)] = Field(  # type: ignore[assignment]
+    stock: Zones = Field(  # type: ignore[assignment]
         description="one stock, or zones [{ of = ..., count = ... }, ...] in the order of the strands"
     )
     rail_from: tuple[PointField, ...] | None = Field(None, description="points of the rail they hang from")
@@ -151,9 +132,15 @@ def expand(swags: SwagsBase, _setting: Setting) -> list[Hanging] | Refusal:
     if faults:
         return Refusal(faults)
     row = _row(swags)
-    count = len(row.starts)
-    values, stocks = _each(swags, count), _stocks(swags, count)
-    faults = tuple(_miscounts(swags, values, stocks, count))
+    count, faults = len(row.starts), ()
+    values = _each(swags, count)
+    if len(values) not in (1, count):
+        text = f"has {len(values)} values for {count} strands; give one, {count}, or {{ first, last }}"
+        faults += (Fault((swags.fact,), text),)
+    try:
+        stocks = by_strand(swags.stock, count)
+    except ValueError as error:
+        faults += (Fault(("stock",), str(error)),)
     if faults:
         return Refusal(faults)
     points = zip(row.starts.tolist(), row.ends.tolist(), strict=True)
@@ -191,17 +178,6 @@ def _ring_faults(ring: Ring, other: Ring | None) -> Sequence[Fault]:
     return []
 
 
-def _miscounts(swags: SwagsBase, values: Sequence[Any], stocks: Sequence[Stock], count: int) -> Sequence[Fault]:
-    """Why the values or the zones of stock do not fit the strands."""
-    found = []
-    if len(values) not in (1, count):
-        text = f"has {len(values)} values for {count} strands; give one, {count}, or {{ first, last }}"
-        found.append(Fault((swags.fact,), text))
-    if len(stocks) != count:
-        found.append(Fault(("stock",), f"has zones for {len(stocks)} strands, but there are {count}"))
-    return found
-
-
 def _row(swags: SwagsBase) -> Row:
     """Return where the strands hang; a ring's last strand ends where its first began."""
     if swags.ring is not None and swags.to_ring is None:
@@ -225,10 +201,6 @@ def _each(swags: SwagsBase, count: int) -> tuple[Any, ...]:
         inner = links.count(between[1:-1], 1.0, parity=swags.parity)
         return (given.first, *inner.tolist(), given.last)
     return tuple(tuple(value) if isinstance(value, list) else value for value in between.tolist())
-
-
-def _stocks(swags: SwagsBase, count: int) -> list[Stock]:
-    return [zone.of for zone in swags.stock for _ in range(zone.count or count)]
 
 
 def _strand(swags: SwagsBase, number: int, ends: tuple[Any, Any], stock: Stock, value: Any) -> Hanging:  # noqa: ANN401
