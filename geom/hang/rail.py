@@ -59,7 +59,8 @@ def rail(points: Sequence[Sequence[float]]) -> Rail:
         If fewer than two different points are left.
     """
     corners = np.array(points, dtype=np.float64).reshape(-1, 3)
-    corners = corners[np.concatenate([[True], np.any(np.diff(corners, axis=0) != 0.0, axis=1)])]
+    moved = np.any(np.diff(corners, axis=0) != 0.0, axis=1)
+    corners = np.concatenate([corners[:1], corners[1:][moved]])
     if len(corners) < 2:
         raise ValueError("has no length; give at least two different points [x, y, z]")
     corners.setflags(write=False)

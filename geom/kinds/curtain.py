@@ -15,12 +15,12 @@ from geom.hang.curtain import AskedCurtain, MadeCurtain, each_made
 from geom.hang.curtain_filling import fill
 from geom.hang.hem import Hem, HemShape
 from geom.hang.rail import Rail, even, rail, spaced
+from geom.hang.refusals import MOST_LINKS
 from geom.kinds.hanging import Member
 from geom.registry import Fault, Kind, Outcome, Refusal, refuse
 from geom.setting.options import Setting
 from geom.setting.stock.zones import Zones, by_strand
 
-MOST_LINKS = 1_000_000  # of all copies together: a design of more is refused
 MOST_STRANDS = 100_000
 
 HEM_SHORT = 1e-3
@@ -66,7 +66,7 @@ class Curtain(Member):
 
 def solve(curtains: Sequence[Curtain], setting: Setting) -> list[Outcome]:
     """Solve the strands of all curtains of a design in one array call."""
-    laid = [_laid(curtain) for curtain in curtains]
+    laid = [_laid(curtain, setting) for curtain in curtains]
     asked = [curtain for curtain in laid if isinstance(curtain, AskedCurtain)]
     made = iter(each_made(asked, setting.shop.step))
     return [
@@ -75,7 +75,7 @@ def solve(curtains: Sequence[Curtain], setting: Setting) -> list[Outcome]:
     ]
 
 
-def _laid(curtain: Curtain) -> AskedCurtain | Refusal:
+def _laid(curtain: Curtain, setting: Setting) -> AskedCurtain | Refusal:
     """Return the strands of a curtain along its rail, or why there can be none."""
     faults = []
     try:
@@ -85,11 +85,9 @@ def _laid(curtain: Curtain) -> AskedCurtain | Refusal:
         faults.append(Fault(("rail",), str(error)))
     else:
         if line.plan[-1] == 0.0:
-            faults.append(
-                Fault(("rail",), "stands upright, so that all strands would hang in one; give a rail that runs")
-            )
+            faults.append(Fault(("rail",), "stands upright: all strands would be one; give a rail that runs on plan"))
     faults += _scallop_faults(curtain)
-    faults += [] if faults else _count_faults(curtain, line)
+    faults += [] if faults else _count_faults(curtain, line, setting)
     if faults:
         return Refusal(tuple(faults))
     distance = even(line.length, curtain.strands) if curtain.strands else spaced(line.length, curtain.spacing or 1.0)
@@ -121,11 +119,11 @@ def _scallop_faults(curtain: Curtain) -> list[Fault]:
     return []
 
 
-def _count_faults(curtain: Curtain, line: Rail) -> list[Fault]:
+def _count_faults(curtain: Curtain, line: Rail, setting: Setting) -> list[Fault]:
     if curtain.strands == 1:
         return [Fault(("strands",), "1 cannot stand at both ends of the rail; give 2 or more")]
     if curtain.spacing is not None and not curtain.spacing <= line.length * (1.0 + 1e-9):
-        return [Fault(("spacing",), f"leaves one strand on a rail of {line.length:.6g} m; give less")]
+        return [Fault(("spacing",), f"leaves one strand on a rail of {setting.stated(line.length)}; give less")]
     if curtain.spacing is not None and line.length / curtain.spacing > MOST_STRANDS:
         return [Fault(("spacing",), f"comes to over {MOST_STRANDS} strands; give more")]
     return []
@@ -150,7 +148,8 @@ def _faults(curtain: Curtain, asked: AskedCurtain, curtained: MadeCurtain, setti
     over = wanted.drop <= 0.0
     if over.any():
         worst = int(np.argmin(wanted.drop))
-        text = f"is {say_length(abs(float(wanted.drop[worst])))} over the rail at {_and_others(asked, worst, over)}"
+        by = float(-wanted.drop[worst])
+        text = f"{f'is {say_length(by)} over' if by else 'meets'} the rail at {_and_others(asked, worst, over)}"
         yield Fault(("hem",), f"{text}; give less than the rail's {say_length(float(wanted.rail[worst]))} there")
         return
     lacking = made.lacking | made.too_long

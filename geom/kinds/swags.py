@@ -15,10 +15,11 @@ from geom.hang import links
 from geom.hang.filling import wanted_of
 from geom.hang.intent import FACTS
 from geom.hang.rail import even, rail, ring
+from geom.hang.refusals import MOST_LINKS
 from geom.hang.row import Row
 from geom.hang.swags import gathered
 from geom.kinds.hanging import Hanging, Member
-from geom.registry import Fault, Layout, Outcome, Path, Refusal
+from geom.registry import Fault, Layout, Outcome, Path, Refusal, refuse
 from geom.result import Piece
 from geom.setting.options import Setting
 from geom.setting.stock import Stock
@@ -38,7 +39,7 @@ class Ring(Section):
     """A level ring of points, the first at +x, going anticlockwise seen from above."""
 
     centre: PointField = Field(description="its centre, [x, y, z]")
-    diameter: Size = Field(description="of the circle that its points are on")
+    diameter: Size = Field(description="the diameter of the circle that its points are on")
     points: Copies = Field(description="how many points, evenly round")
 
     @property
@@ -161,12 +162,15 @@ def _faults(swags: SwagsBase) -> Sequence[Fault]:
         found.append(Fault(("count",), "is missing; give how many hang between the rails"))
     elif swags.count < 2:
         found.append(Fault(("count",), "1 cannot stand at both ends of the rails; give 2 or more, or a [[hanging]]"))
-    for key in ("rail_from", "rail_to"):
+    for key, points in (("rail_from", swags.rail_from), ("rail_to", swags.rail_to)):
         try:
-            rail(getattr(swags, key) or ((0, 0, 0), (1, 0, 0)))
+            rail(points if points is not None else _ANY_RAIL)
         except ValueError as error:
             found.append(Fault((key,), str(error)))
     return found
+
+
+_ANY_RAIL = ((0.0, 0.0, 0.0), (1.0, 0.0, 0.0))  # stands for one that is missing, which is said already
 
 
 def _ring_faults(ring: Ring, other: Ring | None) -> Sequence[Fault]:
@@ -221,6 +225,10 @@ def _strand(swags: SwagsBase, number: int, ends: tuple[Any, Any], stock: Stock, 
 
 def gather(swags: SwagsBase, parts: Sequence[Piece], _setting: Setting) -> Outcome:
     """Make one piece of the solved strands."""
+    counted = sum(part.figures.links.count for part in parts if part.figures.links is not None) * swags.copies
+    if counted > MOST_LINKS:
+        key = "ring" if swags.count is None else "count"
+        return refuse(key, f"comes to {counted} links, copies included; a design has at most {MOST_LINKS}: give fewer")
     given = getattr(swags, swags.fact)
     wanted = wanted_of(swags.fact, given[0]) if isinstance(given, tuple) and len(given) == 1 else None
     return gathered(swags.mark, parts, _row(swags), wanted, copies=swags.copies)
