@@ -22,8 +22,8 @@ from export.picture.sizes import PAPER
 from export.picture.values import Panel, Picture, Text, around, shifted
 from export.picture.views import Drawing, tidy
 from export.picture.wording import Wording, force, significant
-from geom.result import Dimension, Frame, Quantity, Unit, fixed
-from tests.designs import NET, RUN, SWAGS, in_unit, many, solved
+from geom.result import Dimension, Frame, Quantity, Result, Unit, fixed
+from tests.designs import NET, RUN, SWAGS, by_hand, in_unit, many, solved
 
 WITHIN = 0.0005
 DESIGNS = {
@@ -32,9 +32,17 @@ DESIGNS = {
 }  # fmt: skip
 
 
+NAMES = [*DESIGNS, "by hand"]
+
+
+@cache
+def result_of(name: str) -> Result:
+    return by_hand() if name == "by hand" else solved(DESIGNS[name])
+
+
 @cache
 def drawn(name: str) -> Picture:
-    return picture(solved(DESIGNS[name]), Drawing(WITHIN))
+    return picture(result_of(name), Drawing(WITHIN))
 
 
 def texts(panel: Panel) -> Iterator[tuple[Text, shapely.Polygon]]:
@@ -64,7 +72,7 @@ def heavy_lines(panel: Panel) -> list[shapely.LineString]:
     return [shapely.LineString(line + panel.at) for line in lines]
 
 
-@pytest.mark.parametrize("name", DESIGNS)
+@pytest.mark.parametrize("name", NAMES)
 def test_no_two_texts_overlap(name: str) -> None:
     boxes = all_texts(drawn(name))
     tree = shapely.STRtree([box for _, box in boxes])
@@ -75,7 +83,7 @@ def test_no_two_texts_overlap(name: str) -> None:
                 assert overlap < 1e-6, f"{said!r} lies on {boxes[other][0]!r}"
 
 
-@pytest.mark.parametrize("name", DESIGNS)
+@pytest.mark.parametrize("name", NAMES)
 def test_no_text_lies_across_a_heavy_line(name: str) -> None:
     for panel in drawn(name).panels:
         tree = shapely.STRtree(heavy_lines(panel))
@@ -83,7 +91,7 @@ def test_no_text_lies_across_a_heavy_line(name: str) -> None:
             assert not len(tree.query(box, predicate="intersects")), one.text
 
 
-@pytest.mark.parametrize("name", DESIGNS)
+@pytest.mark.parametrize("name", NAMES)
 def test_everything_is_within_the_sheet_at_the_chosen_scale(name: str) -> None:
     shown = drawn(name)
     if shown.sheets == 1:
@@ -98,7 +106,7 @@ def test_everything_is_within_the_sheet_at_the_chosen_scale(name: str) -> None:
                 assert whole.contains(shapely.MultiPoint(stroke.points / panel.per + panel.at))
 
 
-@pytest.mark.parametrize("name", DESIGNS)
+@pytest.mark.parametrize("name", NAMES)
 def test_no_panel_lies_on_another_and_pieces_stand_fifteen_heights_or_a_tenth_apart(name: str) -> None:
     shown = drawn(name)
     panels = [panel for panel in shown.panels if panel.kind != "heading"]
@@ -112,13 +120,14 @@ def test_no_panel_lies_on_another_and_pieces_stand_fifteen_heights_or_a_tenth_ap
             assert cores[one].distance(cores[other]) >= least - 1e-6
 
 
-@pytest.mark.parametrize("name", DESIGNS)
+@pytest.mark.parametrize("name", NAMES)
 def test_a_dimension_says_and_measures_its_figure(name: str) -> None:
-    wording = Wording(solved(DESIGNS[name]).setting.drawing_unit)
+    wording = Wording(result_of(name).setting.drawing_unit)
     found = [placed for panel in drawn(name).panels for placed in panel.dimensions]
     assert found
     for placed in found:
         said = wording.length(placed.value)
+        said = f"R {said}" if placed.kind == "radius" else said
         assert placed.text.text == (f"{said} {placed.says}" if placed.says else said)
         assert placed.measured == pytest.approx(placed.value, rel=1e-9, abs=1e-9)
 
@@ -210,9 +219,9 @@ def test_supports_of_what_hangs_stand_over_it() -> None:
     assert all(points[0][1] < points[1:, 1].min() for points in triangles)
 
 
-@pytest.mark.parametrize("name", DESIGNS)
+@pytest.mark.parametrize("name", NAMES)
 def test_on_a_screen_nothing_overlaps_and_all_is_within_its_width(name: str) -> None:
-    shown = screen(solved(DESIGNS[name]))
+    shown = screen(result_of(name))
     boxes = [found for panel in shown.panels for found in texts(panel)]
     tree = shapely.STRtree([box for _, box in boxes])
     for number, (one, box) in enumerate(boxes):
@@ -224,6 +233,34 @@ def test_on_a_screen_nothing_overlaps_and_all_is_within_its_width(name: str) -> 
         for panel in shown.panels:
             lines = shapely.STRtree(heavy_lines(panel))
             assert not len(lines.query(box, predicate="intersects")), one.text
+
+
+def test_every_kind_of_dimension_is_placed() -> None:
+    kinds = [placed.kind for panel in drawn("by hand").panels for placed in panel.dimensions]
+    assert len(kinds) == 10
+    assert set(kinds) == {"linear", "radius", "ordinate"}
+    assert drawn("by hand").dropped == 0
+
+
+def test_loads_hang_to_their_hangers_length_and_the_ground_is_hatched() -> None:
+    panel = next(one for one in drawn("by hand").panels if one.name == "W")
+    paths = panel.groups[0].paths
+    plumb = [np.ptp(p.points, axis=0) for p in paths if p.look.layer == "LOADS" and len(p.points) == 2]
+    assert sorted(line[1] * panel.per for line in plumb if line[0] == 0)[-2:] == pytest.approx([0.6, 0.6], rel=1e-9)
+    hatching = [p for p in paths if p.look.layer == "FLOOR"]
+    ground = next(s for s in panel.groups[0].strokes if s.look.layer == "FLOOR")
+    assert len(hatching) > 20
+    tops = np.array([p.points[0] for p in hatching])
+    assert np.interp(tops[:, 0], *(ground.points / panel.per).T) == pytest.approx(tops[:, 1], abs=1e-9)
+
+
+def test_the_axis_of_what_has_a_thickness_is_a_centre_line_and_the_thrust_is_warm() -> None:
+    strokes = next(one for one in drawn("by hand").panels if one.name == "A").groups[0].strokes
+    axis, thrust = (next(s.look for s in strokes if s.look.layer == layer) for layer in ("AXIS", "THRUST"))
+    assert (axis.linetype, axis.width) == ("CENTER", 18)
+    assert (thrust.linetype, thrust.colour) == ("PHANTOM", "warm")
+    wire = next(one for one in drawn("by hand").panels if one.name == "W").groups[0].strokes
+    assert next(s.look for s in wire if s.look.layer == "AXIS") == looks.LAYERS["AXIS"]
 
 
 FRAME = Frame(fixed([0, 0, 0]), fixed([1, 0, 0]), fixed([0, 0, 1]))

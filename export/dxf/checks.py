@@ -107,8 +107,12 @@ def check(doc: Drawing, expected: Expected) -> Checked:
         "entities": len(space),
         "pieces": len(expected.blocks),
         "links": links,
-        "extents": [round(value, expected.fmt.decimals) for value in (extents if expected.heights else extents[:4])],
+        "extents": _rounded(extents if expected.heights else extents[:4], expected.fmt.decimals),
     }
+
+
+def _rounded(extents: tuple[float, ...], decimals: int) -> list[float] | None:
+    return [round(value, decimals) for value in extents] if np.isfinite(extents).all() else None
 
 
 def geometry(doc: Drawing, symbols: frozenset[str] = frozenset()) -> tuple[float, ...]:

@@ -44,8 +44,6 @@ def add(doc: Drawing, pen: Pen, placed: Placed, per: float) -> None:
         values["text"] = placed.text.text
     elif placed.says:
         values["text"] = f"<> {placed.says}"
-    if placed.text.angle:
-        values["text_rotation"] = 0.0
     pen.layout.new_entity("DIMENSION", values)
 
 

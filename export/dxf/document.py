@@ -13,6 +13,8 @@ from contextlib import contextmanager
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
+import numpy as np
+
 from export.picture.looks import Colour, Look, dashes
 from export.picture.sizes import PAPER
 from geom import units
@@ -28,6 +30,9 @@ _DECIMALS = {"mm": 5, "cm": 6, "m": 8, "in": 6, "ft": 7}
 _FONT = "arial.ttf"
 TEXT_STYLE = "NOTES"
 DIMENSION_STYLE = "BUILDING"
+# Of the references to the pieces' blocks, whose lines are on their own layers. To freeze it hides the blocks, so it is
+# one nobody freezes: the members of a net are the net, and nothing else is on it.
+BLOCKS_LAYER = "MEMBERS"
 _CHUNK = 1 << 20  # characters handed on at a time
 
 
@@ -65,6 +70,9 @@ def new(fmt: Format, layers: Mapping[str, Look]) -> Drawing:
         doc.header["$INSUNITS"] = units.UNITS[fmt.unit].insunits
         doc.header["$MEASUREMENT"] = int(fmt.unit in _METRIC)
     doc.header["$LTSCALE"] = 1.0
+    if not fmt.old:
+        doc.header["$PSLTSCALE"] = 0  # dashes are laid out for the print scale already
+        doc.header["$LWDISPLAY"] = 1
     doc.header["$LUNITS"] = {"ft": 4, "in": 5}.get(fmt.unit, 2)
     _line_types(doc, fmt, layers)
     for name, look in layers.items():
@@ -124,6 +132,7 @@ def _dimension_style(doc: Drawing, fmt: Format) -> None:
     for name, value in attributes.items():
         if style.dxf.is_supported(name):
             style.dxf.set(name, value)
+    style.copy_to_header(doc)
     doc.header["$DIMSTYLE"] = DIMENSION_STYLE
 
 
@@ -155,6 +164,10 @@ def chunks(
         for name in sorted(doc.entitydb.dxf_types_in_use()):
             doc.classes.add_class(name)
         doc.classes.classes = dict(sorted(doc.classes.classes.items()))
+    wide, high = box[2] - box[0], box[3] - box[1]
+    if np.isfinite(box).all():
+        # opened on the whole drawing, in a window about twice as wide as high
+        doc.set_modelspace_vport(1.1 * max(high, wide / 2), ((box[0] + box[2]) / 2, (box[1] + box[3]) / 2))
     stream = io.StringIO()
     with _undated():
         doc.write(stream)

@@ -7,7 +7,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING
 
 from export.dxf import checks, dimension
-from export.dxf.document import Format, chunks, new
+from export.dxf.document import BLOCKS_LAYER, Format, chunks, new
 from export.dxf.links import LinkBlocks
 from export.dxf.names import Names
 from export.dxf.pen import Pen
@@ -15,14 +15,12 @@ from export.outputs import Checked, Choices, File, Output
 from export.picture.looks import LAYERS
 from export.picture.make import picture
 from export.picture.values import Box, Group, Panel, Picture, around, box_of, shifted
-from export.picture.views import Drawing
+from export.picture.views import Drawing, links_drawn
 from export.picture.wording import Wording
 from geom.result import Result
 
 if TYPE_CHECKING:
     from ezdxf.document import Drawing as Document
-
-_BLOCKS_LAYER = "NOTES"  # of the references to the pieces' blocks, whose own lines are on their own layers
 
 
 def write(result: Result, choices: Choices) -> Iterable[File]:
@@ -46,7 +44,9 @@ class _Made:
         setting = result.setting.drawing
         within = choices.within or setting.within
         self.marks = tuple(piece.mark for piece in result.pieces)
-        self.picture = picture(result, Drawing(within, setting.curve == "arcs"), extra=[_within(within)])
+        few = links_drawn(result)
+        said = [_within(within), *([] if few else ["Links are too many to be drawn one by one"])]
+        self.picture = picture(result, Drawing(within, setting.curve == "arcs", few), extra=said)
         unit = result.setting.drawing_unit
         self.fmt = Format(setting.version, unit, self.picture.ratio / 1000 * Format(setting.version, unit).factor)
         self.document: Document | None = None
@@ -119,7 +119,7 @@ def _group(doc: Document, group: Group, name: str, links: LinkBlocks, space: Pen
     for text in group.texts:
         pen.text(text)
     if group.mark:
-        space.block(name, space.moved, _BLOCKS_LAYER)
+        space.block(name, space.moved, BLOCKS_LAYER)
 
 
 def _place(drawn: Picture, at: tuple[float, float], fmt: Format) -> tuple[float, float]:

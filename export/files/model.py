@@ -10,7 +10,7 @@ from typing import TYPE_CHECKING
 import numpy as np
 
 from export.dxf import checks
-from export.dxf.document import Format, chunks, new
+from export.dxf.document import BLOCKS_LAYER, Format, chunks, new
 from export.dxf.names import Names
 from export.dxf.space import SpaceLinks, SpacePen
 from export.outputs import Checked, Choices, File, Output
@@ -18,10 +18,10 @@ from export.picture.looks import LAYERS, LOOKS, look
 from export.picture.panels import labels_of
 from export.picture.scale import round_length
 from export.picture.values import Box, Floats
-from export.picture.views import SAME, bodies, lines_of, solids_of
+from export.picture.views import SAME, lines_of, linked, links_drawn, solids_of
 from geom import units
 from geom.result import PLAN, Label, Piece, Result
-from geom.solids import Balls, Bars, Links
+from geom.solids import Balls, Links
 
 if TYPE_CHECKING:
     from ezdxf.document import Drawing as Document
@@ -44,10 +44,11 @@ def verify(path: Path, result: Result, choices: Choices) -> Checked:
 
 @dataclass(frozen=True, eq=False)
 class _Drawn:
-    """A piece's curves as they are drawn: role, points (n, 3) m, closed."""
+    """A piece's curves as they are drawn: role, points (n, 3) m, closed; and what is drawn as links."""
 
     piece: Piece
     lines: tuple[tuple[str, Floats, bool], ...]
+    links: tuple[Links | Balls, ...]
 
 
 class _Made:
@@ -58,7 +59,11 @@ class _Made:
         self.result = result
         self.fmt = Format(setting.version, result.setting.drawing_unit)
         within = choices.within or setting.within
-        self.drawn = tuple(_Drawn(piece, tuple(_lines(piece, within))) for piece in result.pieces)
+        few = links_drawn(result)
+        self.drawn = tuple(
+            _Drawn(piece, tuple(_lines(piece, within)), tuple(linked(solids_of(piece))) if few else ())
+            for piece in result.pieces
+        )
         points = [line for one in self.drawn for _, line, _ in one.lines] or [np.zeros((1, 3))]
         self.low = np.min([line.min(axis=0) for line in points], axis=0)
         self.high = np.max([line.max(axis=0) for line in points], axis=0)
@@ -75,7 +80,7 @@ class _Made:
         """What the file must show when it is read."""
         names = Names(old=self.fmt.old)
         blocks = tuple(names.of(piece.mark) for piece in self.result.pieces)
-        links = sum(len(body.places) for piece in self.result.pieces for body in _linked(piece))
+        links = sum(len(body.places) for one in self.drawn for body in one.links)
         return checks.Expected(self.fmt, frozenset(LAYERS), blocks, links, self.extents, self.heights, _SYMBOLS)
 
     @property
@@ -102,7 +107,7 @@ class _Made:
             name = names.of(one.piece.mark)
             pen = SpacePen(doc.blocks.new(name), self.fmt, LAYERS)
             _piece(pen, one, links, _TEXT_SHARE * largest)
-            doc.modelspace().add_blockref(name, (0.0, 0.0, 0.0), {"layer": "NOTES"})
+            doc.modelspace().add_blockref(name, (0.0, 0.0, 0.0), {"layer": BLOCKS_LAYER})
         _notes(SpacePen(doc.modelspace(), self.fmt, LAYERS), self.low, largest)
         return doc
 
@@ -122,20 +127,11 @@ def _lines(piece: Piece, within: float) -> Iterator[tuple[str, Floats, bool]]:
             yield line.role, points[:-1] if closed else points, closed
 
 
-def _linked(piece: Piece) -> Iterator[Links | Balls]:
-    """Bodies that are drawn as links: chain, and beads where they are not the nodes of a frame."""
-    found = list(bodies(solids_of(piece)))
-    framed = any(isinstance(body, Bars) for body in found)
-    for body in found:
-        if isinstance(body, Links) or (isinstance(body, Balls) and not framed):
-            yield body
-
-
 def _piece(pen: SpacePen, one: _Drawn, links: SpaceLinks, height: float) -> None:
     thick = any(role in ("intrados", "extrados") for role, _, _ in one.lines)
     for role, points, closed in one.lines:
         pen.line(points, look(role, thick=thick), closed=closed)
-    for body in _linked(one.piece):
+    for body in one.links:
         links.draw(pen, body)
     for label in labels_of(one.piece):
         _label(pen, label, one.piece, height)

@@ -1,6 +1,8 @@
 """What is taken on a panel: a grid of small cells, so that a mark finds a free place in constant time."""
 
+import math
 from dataclasses import dataclass, field
+from functools import lru_cache
 
 import numpy as np
 from numpy.typing import NDArray
@@ -63,11 +65,13 @@ class Ground:
     def free_turned(self, corners: Floats, bits: int = ANY, margin: float = 0.0) -> bool:
         """Return the same of a box with corners (4, 2) in turn, at any angle."""
         corners = grown(corners, margin)
-        low, high = corners.min(axis=0), corners.max(axis=0)
-        left, bottom, right, top = self.box
-        if low[0] < left or low[1] < bottom or high[0] > right or high[1] > top:
+        (left, bottom), (right, top) = corners.min(axis=0).tolist(), corners.max(axis=0).tolist()
+        if left < self.box[0] or bottom < self.box[1] or right > self.box[2] or top > self.box[3]:
             return False
-        return not self.meets(self._spread(corners), bits)
+        if self.free((left, bottom, right, top), bits):
+            return True
+        middle = (corners[0] + corners[3]) / 2, (corners[1] + corners[2]) / 2
+        return not (self.crosses(*middle, bits) or self.meets(self._spread(corners), bits))
 
     def room_for(self, text: Text, margin: float) -> bool:
         """Return whether a text, and a margin round it, touches nothing."""
@@ -82,14 +86,15 @@ class Ground:
 
     def crosses(self, start: Floats, end: Floats, bits: int) -> bool:
         """Return whether the straight line between two points meets any of `bits`."""
-        count = max(2, int(np.hypot(*(end - start)) / (self.cell / 2)) + 1)
-        return self.meets(start + (end - start) * np.linspace(0.0, 1.0, count)[:, None], bits)
+        step = end - start
+        count = max(2, int(math.hypot(*step.tolist()) / (self.cell / 2)) + 1)
+        return self.meets(start + step * (np.arange(count) / (count - 1))[:, None], bits)
 
     def _spread(self, corners: Floats) -> Floats:
+        """Points all over a box with corners (4, 2) in turn, none further apart than half a cell."""
         along, up = corners[1] - corners[0], corners[3] - corners[0]
-        counts = [max(2, int(np.ceil(np.hypot(*side) / (self.cell / 2))) + 1) for side in (along, up)]
-        u, v = np.meshgrid(np.linspace(0, 1, counts[0]), np.linspace(0, 1, counts[1]))
-        return np.asarray(corners[0] + u.ravel()[:, None] * along + v.ravel()[:, None] * up)
+        counts = [max(2, math.ceil(math.hypot(*side) / (self.cell / 2)) + 1) for side in (along.tolist(), up.tolist())]
+        return np.asarray(corners[0] + _shares(counts[0], counts[1]) @ np.stack([along, up]))
 
     def points(self, points: Floats, bits: int) -> None:
         """Enter points (n, 2)."""
@@ -103,9 +108,19 @@ class Ground:
         return rows, columns, inside
 
 
+@lru_cache(maxsize=4096)
+def _shares(along: int, up: int) -> Floats:
+    """Shares of both sides of a box for a grid of points over it, (along * up, 2)."""
+    shares = np.indices((along, up)).reshape(2, -1).T / (along - 1, up - 1)
+    shares.setflags(write=False)
+    return np.asarray(shares)
+
+
 def grown(corners: Floats, margin: float) -> Floats:
     """Return the corners (4, 2), in turn, of a box larger by a margin on each side."""
+    if not margin:
+        return corners
     along, up = corners[1] - corners[0], corners[3] - corners[0]
-    along = along / max(float(np.hypot(*along)), 1e-30) * margin
-    up = up / max(float(np.hypot(*up)), 1e-30) * margin
-    return np.asarray(corners + np.array([-along - up, along - up, along + up, -along + up]))
+    along = along * (margin / max(math.hypot(*along.tolist()), 1e-30))
+    up = up * (margin / max(math.hypot(*up.tolist()), 1e-30))
+    return np.asarray(corners + np.stack([-along - up, along - up, along + up, up - along]))

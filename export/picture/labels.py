@@ -17,6 +17,7 @@ from export.picture.sizes import Sizes
 from export.picture.values import Box, Circle, Floats, Path, Text, box_of
 from geom.result import LabelRole
 
+_ORDER = ("support", "held point", "load", "node", "part", "joint", "member")  # who is placed first
 _MANY = 20  # marks in a view from which on they may be smaller
 _SHORT_MARK = 3  # characters that a triangle of a support mark holds
 _LEADER_RINGS = (2.5, 4.0, 6.0, 9.0)  # distances tried, in heights of the text
@@ -62,6 +63,7 @@ class _Tag:
 
 def place(wanted: Sequence[Wanted], ground: Ground, sizes: Sizes) -> Marks:
     """Return marks in their places, and enter them into the ground."""
+    wanted = sorted(wanted, key=lambda mark: _ORDER.index(mark.role))
     before = ground.cells.copy()
     marks, left = _around_all(wanted, ground, sizes, sizes.note)
     height = sizes.note
@@ -182,10 +184,12 @@ def _leaders(tag: _Tag, sizes: Sizes) -> Iterator[tuple[Floats, Floats, Floats]]
 
 
 def _free(tag: _Tag, middle: Floats, angle: float, ground: Ground, margin: float) -> bool:
-    if angle:
+    (x, y), (wide, high) = middle.tolist(), tag.half
+    if angle == np.pi / 2:
+        wide, high = high, wide
+    elif angle:
         return ground.free_turned(_corners(tag, middle, angle), ANY, margin)
-    (x, y), (wide, high) = middle, tag.half
-    return ground.free((float(x) - wide, float(y) - high, float(x) + wide, float(y) + high), ANY, margin)
+    return ground.free((x - wide, y - high, x + wide, y + high), ANY, margin)
 
 
 def _corners(tag: _Tag, middle: Floats, angle: float) -> Floats:

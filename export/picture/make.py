@@ -17,6 +17,7 @@ from geom.result import Result
 
 _SMALLEST = 25.0  # printed mm: once all geometry is smaller, a smaller scale makes no more room for its text
 _MORE_SCALES = 1  # smaller scales looked at for the sake of marks: at still smaller ones they have less room
+_FEW_DROPPED = 12  # marks without room that a smaller scale may still find it for
 _MORE_SHEETS = 1.5  # times the fewest sheets possible: so much a larger scale may cost
 _TITLE_ROOM = 12.0  # at least this much stands under each view, mm: mark and two lines
 _MARKS: tuple[Marks, ...] = ("free", "within")  # tried in turn
@@ -71,14 +72,14 @@ def picture(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> P
         if best is None or shown.dropped == 0:
             best = shown
         left += 1
-        if best.dropped == 0 or left > _MORE_SCALES:
+        if best.dropped == 0 or best.dropped > _FEW_DROPPED or left > _MORE_SCALES:
             break
     return best or _on_sheets(found, candidates, on)
 
 
 def _on_sheets(found: Contents, candidates: Sequence[Scale], on: Sheet) -> Picture:
     """The picture on several sheets: scales are tried upwards from the smallest, as long as few sheets are added."""
-    upwards = list(reversed(candidates)) or [list(scales(found.wording.unit))[-1]]
+    upwards = list(reversed(candidates)) or [next(one for one in scales(found.wording.unit) if one.ratio == 1)]
     fewest, fitting = 0, []
     for scale in upwards:
         arranged = _unmarked(found, scale, on, feed=True)

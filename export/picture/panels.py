@@ -36,6 +36,8 @@ _CELL = 0.2  # of the grid, in heights of the notes' text: half a millimetre on 
 _MARGIN = 14.0  # round a view where marks may still stand, in the same
 _MOST_ASIDE = 6  # dimensions in a column beside a view; more are no longer told apart
 _END = 1e-4  # m: a line that ends within this of a support is held there
+_CROWDED = 12  # labels of a view from which on supports may stand for those behind them
+_BEHIND = 1.2  # in heights of a support's symbol: nearer ones cannot be told apart
 _FEW = 40  # marks of a view that are placed before the dimensions inside it
 _MOST_CELLS = 4e6  # of one grid: a sheet of A0 at half a millimetre
 
@@ -61,6 +63,7 @@ class Subject:
     seen: Seen
     labels: tuple[Label, ...]
     measures: tuple[Measure, ...]
+    above: tuple[bool, ...]  # of each label whether what is there hangs from it
     cautions: tuple[int, ...] = ()
 
 
@@ -90,7 +93,9 @@ def subject(piece: Piece, view: View, drawing: Drawing, wording: Wording, cautio
     """Return a view of a piece ready to be printed at any scale."""
     shown = seen(piece, view, drawing)
     found = labels_of(piece) if view.labels is None else view.labels
-    return Subject(piece, view, shown, found, tuple(measures(view.dimensions, view.frame, wording)), tuple(cautions))
+    above = tuple(_held_from_above(shown, view.frame.flat(np.array([label.at for label in found]).reshape(-1, 3))))
+    told = tuple(measures(view.dimensions, view.frame, wording))
+    return Subject(piece, view, shown, found, told, above, tuple(cautions))
 
 
 def labels_of(piece: Piece) -> tuple[Label, ...]:
@@ -109,7 +114,7 @@ def elevation(subject: Subject, print_: Print, *, marks: Marks = "free") -> Pane
     per, sizes = print_.per, print_.sizes
     drawn = Drawn()
     geometry = printed(subject.seen.box, per)
-    wanted = _symbols(subject, geometry, print_, drawn)
+    wanted = _symbols(subject, print_, drawn)
     core = around(geometry, drawn.box)
     held = _with_levels(subject.measures, core, per, sizes)
     rows = outside(subject.measures, per, held, sizes)
@@ -143,13 +148,19 @@ def _title(subject: Subject, core: Box, print_: Print) -> list[Text]:
     return title(subject.piece, subject.view, print_.wording, print_.sizes, room=room, cautions=subject.cautions)
 
 
-def _symbols(subject: Subject, geometry: Box, print_: Print, drawn: Drawn) -> list[Wanted]:
+def _symbols(subject: Subject, print_: Print, drawn: Drawn) -> list[Wanted]:
     """Draw the symbols of a view's labels and of its ground, and return the marks to be placed beside them."""
     frame, sizes, per = subject.view.frame, print_.sizes, print_.per
     flat_labels = frame.flat(np.array([label.at for label in subject.labels]).reshape(-1, 3)) / per
-    above = _held_from_above(subject, flat_labels * per, (geometry[1] + geometry[3]) / 2 * per)
     wanted = []
-    for label, at, over in zip(subject.labels, flat_labels, above, strict=True):
+    shown: list[Floats] = []
+    crowded = len(subject.labels) > _CROWDED
+    for label, at, over in zip(subject.labels, flat_labels, subject.above, strict=True):
+        if crowded and label.role == "support":
+            # of supports one behind another in the view the first stands for all; the plan names them
+            if any(np.abs(at - other).max() < _BEHIND * sizes.symbol for other in shown):
+                continue
+            shown.append(at)
         along = None if label.along is None else frame.flat(label.along[None] + frame.origin)[0]
         mark = _symbol(label, at, along, above=over, plan=is_plan(frame), print_=print_, drawn=drawn)
         if label.text:
@@ -162,17 +173,18 @@ def _symbols(subject: Subject, geometry: Box, print_: Print, drawn: Drawn) -> li
     return wanted
 
 
-def _held_from_above(subject: Subject, places: Floats, middle: float) -> list[bool]:
+def _held_from_above(shown: Seen, places: Floats) -> list[bool]:
     """Whether what is at each place (n, 2) m runs down from it, so that its support stands over it.
 
     Told by the lines that end there; where none does, by which half of the view it is in.
     """
     ends = [
         (stroke.points[first], stroke.points[second])
-        for stroke in subject.seen.strokes
+        for stroke in shown.strokes
         if stroke.look.heavy or stroke.look.layer == "AXIS"
         for first, second in ((0, 1), (-1, -2))
     ]
+    middle = (shown.box[1] + shown.box[3]) / 2
     if not ends:
         return [bool(place[1] >= middle) for place in places]
     tips, nexts = np.array([end[0] for end in ends]), np.array([end[1] for end in ends])

@@ -10,7 +10,7 @@ from export.picture.values import NOTHING, Box, Floats, Links, Stroke, around, b
 from geom.arcfit import fit_arcs
 from geom.curves import Curve
 from geom.errors import SolveError
-from geom.result import Frame, Line, Piece, View
+from geom.result import Frame, Line, Piece, Result, View
 from geom.solids import Balls, Bars, Body, Prism, Solid, Union
 from geom.solids import Links as LinkBody
 
@@ -19,15 +19,17 @@ SAME = 1e-7
 # A link whose long axis leaves the picture's plane by more than this (cosine) would be drawn too short.
 _IN_PLANE = 0.999
 _FACE_ON = np.cos(np.pi / 4)  # nearer face-on than edge-on
+MOST_LINKS = 100_000  # of a design, drawn one by one: a file of some 60 MB; of more none is drawn
 _THICK = frozenset({"intrados", "extrados"})
 
 
 @dataclass(frozen=True)
 class Drawing:
-    """How curves become strokes: within what distance (m), and as tangent arcs or not."""
+    """How curves become strokes: within what distance (m), as tangent arcs or not, with links or without."""
 
     within: float
     arcs: bool = False
+    links: bool = True
 
 
 @dataclass(frozen=True)
@@ -54,7 +56,7 @@ def seen(piece: Piece, view: View, drawing: Drawing) -> Seen:
     lines = lines_of(piece) if view.lines is None else view.lines
     solids = solids_of(piece) if view.solids is None else view.solids
     strokes = tuple(_strokes(lines, view.frame, drawing))
-    links = tuple(_links(solids, view.frame))
+    links = tuple(_links(solids, view.frame)) if drawing.links else ()
     return Seen(strokes, links, _box(strokes, links))
 
 
@@ -153,27 +155,36 @@ def _singles(body: Body) -> Iterable[Body]:
         yield body
 
 
+def linked(solids: Iterable[Solid]) -> list[LinkBody | Balls]:
+    """Return the bodies that are drawn as links: chain, and beads where they are not the nodes of a frame."""
+    found = list(bodies(solids))
+    framed = any(isinstance(body, Bars) for body in found)
+    return [body for body in found if isinstance(body, LinkBody) or (isinstance(body, Balls) and not framed)]
+
+
+def links_drawn(result: Result) -> bool:
+    """Return whether a design's links are few enough to be drawn one by one."""
+    return sum(len(body.places) for piece in result.pieces for body in linked(solids_of(piece))) <= MOST_LINKS
+
+
 def _links(solids: Iterable[Solid], frame: Frame) -> list[Links]:
     """Links of chains that lie in the plane, and beads, as they are seen; none where some chain leaves the plane."""
     rows: list[Links] = []
-    found = list(bodies(solids))
-    if any(isinstance(body, Bars) for body in found):  # the balls of a frame are its nodes
-        return []
-    for body in found:
-        if isinstance(body, Balls) and len(body.places):
+    for body in linked(solids):
+        if isinstance(body, Balls):
             count, size = len(body.places), 2 * body.radius
             level, face = np.zeros(count), np.ones(count, dtype=np.bool_)
             rows.append(Links(0.0, size, size, frame.flat(body.places), level, face))
-        elif isinstance(body, LinkBody) and len(body.places):
-            along, square = body.turns[:, :, 0], body.turns[:, :, 2]
-            shown = np.stack([along @ frame.along, along @ frame.up], axis=1)
-            if (np.hypot(shown[:, 0], shown[:, 1]) < _IN_PLANE).any():
-                return []
-            angles = np.arctan2(shown[:, 1], shown[:, 0])
-            face = np.abs(square @ np.cross(frame.along, frame.up)) > _FACE_ON
-            link = body.link
-            rows.append(Links(link.wire, link.pitch, link.width, frame.flat(body.places), angles, face))
-    return rows
+            continue
+        along, square = body.turns[:, :, 0], body.turns[:, :, 2]
+        shown = np.stack([along @ frame.along, along @ frame.up], axis=1)
+        if (np.hypot(shown[:, 0], shown[:, 1]) < _IN_PLANE).any():
+            return []
+        angles = np.arctan2(shown[:, 1], shown[:, 0])
+        face = np.abs(square @ np.cross(frame.along, frame.up)) > _FACE_ON
+        link = body.link
+        rows.append(Links(link.wire, link.pitch, link.width, frame.flat(body.places), angles, face))
+    return [row for row in rows if len(row.places)]
 
 
 def _box(strokes: Sequence[Stroke], links: Sequence[Links]) -> Box:
