@@ -16,7 +16,7 @@ from geom.hang.figures import HangingFigures
 from geom.hang.hem import Hem
 from geom.hang.rail import Rail
 from geom.hang.strands import Made, Wanted
-from geom.result import NAN, Metres, Newtons, NewtonsPerMetre, Unit
+from geom.result import NAN, Metres, Newtons, Unit
 from geom.setting.fittings import End
 from geom.setting.stock import Stock
 from geom.units import STANDARD_GRAVITY
@@ -89,8 +89,8 @@ class StrandFigures(HangingFigures):
 class CurtainFigures:
     """Figures of a curtain as a whole; its strands stand beside them.
 
-    What hangs on the rail are the strands and the fittings of both their ends. `heaviest_metre` is what the heaviest
-    strand with its fittings comes to on a metre of rail at its place; null with strands that are not evenly spaced.
+    What hangs on the rail are the strands and the fittings of both their ends; `rail_load` is the mean along the rail,
+    `greatest_rail_load` where the heaviest strand hangs, null with strands that are not evenly spaced.
     """
 
     count: int
@@ -103,10 +103,9 @@ class CurtainFigures:
     over_hem_least: Metres
     over_hem_greatest: Metres
     mass_on_rail: Kilograms
-    mass_on_rail_per_metre: KilogramsPerMetre
-    heaviest_metre: KilogramsPerMetre
+    rail_load: KilogramsPerMetre
+    greatest_rail_load: KilogramsPerMetre
     pull_on_rail: Newtons
-    pull_on_rail_per_metre: NewtonsPerMetre
 
 
 def wanted(curtains: Sequence[AskedCurtain], step: float) -> Wanted:

@@ -208,10 +208,9 @@ def _figures(asked: AskedCurtain, curtain: MadeCurtain) -> CurtainFigures:
         over_hem_least=float(made.over_hem.min()),
         over_hem_greatest=float(made.over_hem.max()),
         mass_on_rail=pull / STANDARD_GRAVITY,
-        mass_on_rail_per_metre=pull / STANDARD_GRAVITY / length,
-        heaviest_metre=float(on_rail.max()) / STANDARD_GRAVITY / spacing,
+        rail_load=pull / STANDARD_GRAVITY / length,
+        greatest_rail_load=float(on_rail.max()) / STANDARD_GRAVITY / spacing,
         pull_on_rail=pull,
-        pull_on_rail_per_metre=pull / length,
     )
 
 
@@ -228,7 +227,7 @@ def _facts(asked: AskedCurtain, whole: CurtainFigures, curtain: MadeCurtain, mas
         Quantity("longest", float(lengths.max()), _METRES),
         Quantity("mass", mass, Unit("kg")),
         Quantity("pull on the rail", whole.pull_on_rail, _NEWTONS),
-        Quantity("pull on a metre of rail", whole.pull_on_rail_per_metre, Unit("N_per_m")),
+        Quantity("pull on a metre of rail", whole.pull_on_rail / whole.rail_length, Unit("N_per_m")),
     )
 
 
