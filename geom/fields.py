@@ -31,6 +31,8 @@ class Known:
     unit: str
     origin: Point = (0.0, 0.0, 0.0)
     named: Mapping[str, Mapping[str, Any]] = field(default_factory=dict)
+    used: set[tuple[str, str]] = field(default_factory=set)
+    """Table and name of every entry referred to so far, by which one that nothing uses is found."""
 
 
 class Unusable(ValueError):
@@ -54,6 +56,7 @@ def look_up(table: str, name: str, info: ValidationInfo) -> Any:  # noqa: ANN401
     if name not in entries:
         hint = near(name, entries)
         raise ValueError(f"there is no {table} {say(name)}{hint or f'; add it as [{table}.{bare_key(name)}]'}")
+    known(info).used.add((table, name))
     if entries[name] is None:
         raise Unusable(name)
     return entries[name]

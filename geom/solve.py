@@ -58,7 +58,7 @@ def solve(design: Design) -> Solved:
         supports=_supports(pieces),
         cuts=cuts,
         stock_plan=stock_plans(cuts, _stocks(pieces), design.setting),
-        cautions=_cautions(pieces),
+        cautions=(*_cautions(pieces), *_unused(design)),
     )
     return Solved(result, ())
 
@@ -128,6 +128,14 @@ def _clashes(design: Design, pieces: Sequence[Piece]) -> list[Problem]:
 
 def _cautions(pieces: Sequence[Piece]) -> tuple[Caution, ...]:
     return tuple(dict.fromkeys(caution for piece in pieces for caution in piece.cautions))
+
+
+def _unused(design: Design) -> tuple[Caution, ...]:
+    """An entry that nothing refers to is most often a line forgotten, such as the fittings of a member."""
+    if not design.unused:
+        return ()
+    text = f"{', '.join(design.unused)}: defined, and nothing in the design uses it; name it where it belongs."
+    return (Caution("not used", "", text, "the design itself"),)
 
 
 def _supports(pieces: Sequence[Piece]) -> tuple[Support, ...]:

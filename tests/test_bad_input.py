@@ -74,3 +74,15 @@ def test_a_mark_given_twice_is_refused_whatever_its_capitals() -> None:
     (problem,) = problems_of(HANGING + second)
     assert problem.key == "mark"
     assert "already the mark of" in problem.text
+
+
+def test_an_entry_that_nothing_uses_is_cautioned_and_one_that_is_used_is_not() -> None:
+    text = HANGING.replace('fittings = { from = "shackle", to = ["shackle", 48] }\n', "")
+    reading = read(text, "bad")
+    assert reading.design is not None
+    result = solve(reading.design).result
+    assert result is not None
+    (caution,) = [caution for caution in result.cautions if caution.code == "not used"]
+    assert "[fitting.shackle]" in caution.text
+    assert "support.A" not in caution.text
+    assert "stock.mine" not in caution.text

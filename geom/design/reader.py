@@ -9,7 +9,7 @@ from __future__ import annotations
 
 import tomllib
 from collections.abc import Iterable, Mapping, Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from typing import Any, TypeVar
 
 from pydantic import ValidationError
@@ -58,6 +58,8 @@ class Design:
     setting: Setting
     items: tuple[Item, ...]
     positions: Positions
+    unused: tuple[str, ...] = ()
+    """Named entries that nothing in the design refers to, as they are written: `[fitting.shackle]`."""
 
 
 @dataclass(frozen=True)
@@ -166,7 +168,7 @@ class _Reader:
             if not isinstance(raw, dict):
                 self.add((table,), f"[{table}]", "", f"is {say(raw)}, not tables; write [{table}.NAME]")
                 raw = {}
-            so_far = Known(known.unit, known.origin, dict(result))
+            so_far = replace(known, named=dict(result))
             result[table] = {name: self._entry(table, model, name, entry, so_far) for name, entry in raw.items()}
         return result
 
@@ -355,15 +357,21 @@ def read(text: str, name: str) -> Reading:
     sections = {table: reader.section(table, model, known) for table, model in SECTIONS.items()}
     site = sections["site"]
     origin = site.origin if isinstance(site, Site) else (0.0, 0.0, 0.0)
-    known = Known(known.unit, origin)
-    known = Known(known.unit, origin, reader.named(known))
+    known = replace(known, origin=origin)
+    known = replace(known, named=reader.named(known))
     items = reader.items(models, known)
     reader.marks(models)
     _count(reader, raw, models)
     problems = tuple(sorted(reader.problems, key=lambda problem: problem.line))
     if unit is None:
         return Reading(None, problems)
-    return Reading(Design(name, title, _setting(unit, sections, raw), items, reader.positions), problems)
+    unused = tuple(
+        f"[{table}.{entry}]"
+        for table in known.named
+        for entry in known.named[table]
+        if (table, entry) not in known.used
+    )
+    return Reading(Design(name, title, _setting(unit, sections, raw), items, reader.positions, unused), problems)
 
 
 def _count(reader: _Reader, raw: Mapping[str, Any], models: Iterable[str]) -> None:

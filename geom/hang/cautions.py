@@ -63,6 +63,13 @@ def _stock(member: Asked, figures: HangingFigures) -> list[Caution]:
             "the user certifies. No factor is applied: the design factor is the engineer's. " + stock.scope
         )
         found.append(Caution("use of capacity", member.mark, text.strip(), stock.source))
+    pull = max(figures.pull_from, figures.pull_to)
+    if stock.breaking_load is not None and pull > stock.breaking_load:
+        text = (
+            f"The greatest end pull, {pull / 1000:.3g} kN, is over the {stock.breaking_load / 1000:.3g} kN at which "
+            f"{stock.name} breaks when new: it cannot hang so."
+        )
+        found.append(Caution("over the breaking load", member.mark, text, stock.source))
     return found
 
 

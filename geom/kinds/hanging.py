@@ -31,9 +31,16 @@ class Member(Feature):
     """What a hanging and the layouts of hangings share: stock, how links are counted, fittings."""
 
     stock: StockRef = Field(description='its stock, like "DIN 763-8" or one of your own [stock.NAME]')
-    parity: Annotated[str, choice("any", "odd", "even")] = Field("any", description="count of links wanted")
-    round: Annotated[str, choice("nearest", "up", "down")] = Field("nearest", description="how links are rounded")
-    fittings: Fittings = Field(default_factory=lambda: Fittings.model_validate({}), description="at each end")
+    parity: Annotated[str, choice("any", "odd", "even")] = Field(
+        "any", description="which counts of links will do: odd has both end links the same way round"
+    )
+    round: Annotated[str, choice("nearest", "up", "down")] = Field(
+        "nearest", description="to which whole count of links what is asked for is rounded"
+    )
+    fittings: Fittings = Field(
+        default_factory=lambda: Fittings.model_validate({}),
+        description="what stands between support and stock, { from = ..., to = ... }",
+    )
 
 
 class Hanging(Member):
@@ -48,7 +55,7 @@ class Hanging(Member):
     links: Count | None = Field(None, description="count of links")
     slack: Ratio | None = Field(None, description="length over the distance between the supports, like 1.12")
     sag: Size | None = Field(None, description="greatest vertical distance under the chord")
-    lowest: Elevation | None = Field(None, description="elevation of the lowest point")
+    lowest: Elevation | None = Field(None, description="elevation (z, upwards) of the lowest point; not a drop")
     pull: PositiveForce | None = Field(None, description="horizontal pull")
     clear: Clear | None = Field(None, description="ground under it and the clearance wanted")
 

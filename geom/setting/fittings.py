@@ -15,10 +15,15 @@ from geom.fields import Mass, Reach, Section, TurnCount, known, look_up
 class FittingEntry(Section):
     """The table [fitting.NAME]."""
 
-    takes: Reach = Field(description="what it adds to pin to pin")
+    takes: Reach = Field(
+        description="what it adds to pin to pin: support point to the inside of the end link, or the rope's bearing"
+    )
     turns: TurnCount = Field(0, description="quarter turns it gives the next link")
-    grip: Reach = Field(0.0, description="rope used up in making the end")
-    mass: Mass = Field(0.0, description="its mass, borne by its support")
+    grip: Reach = Field(0.0, description="length of rope used up in making the end, added to the cut")
+    mass: Mass = Field(
+        0.0,
+        description="its mass, borne by its support; the member weighs its stock's weight over its whole pin to pin",
+    )
 
 
 @dataclass(frozen=True)

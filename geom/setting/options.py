@@ -16,7 +16,7 @@ class Shop(Section):
     """The table [shop]: how pieces are cut."""
 
     temperature: Temperature = Field(20.0, description="at which lengths are measured, degrees Celsius")
-    step: Size = Field(0.001, description="cut lengths are rounded to this")
+    step: Size = Field(0.001, description="cut lengths are rounded to this; 1 mm unless given")
     kerf: Reach = Field(0.0, description="what a cut takes of a rope or bar")
     cut_tolerance: Reach = Field(0.0, description="+/- on a cut length")
     spares: Ratio = Field(0.0, description="share added to the order, 0.05 for five in a hundred")
@@ -39,7 +39,9 @@ class Drawing(Section):
     later: ClassVar[frozenset[str]] = frozenset({"links"})
 
     unit: Annotated[Word | None, choice("mm", "cm", "m", "in", "ft")] = Field(None, description="unit of drawings")
-    within: Size = Field(0.0005, description="greatest distance of a drawn curve from the true one")
+    within: Size = Field(
+        0.0005, description="greatest distance of a drawn curve from the true one; 0.5 mm unless given"
+    )
     curve: Annotated[Word, choice("polyline", "arcs")] = Field("polyline", description="how curves are drawn")
     version: Annotated[Word, choice("R2010", "R12")] = Field("R2010", description="version of the DXF format")
     sheet: Annotated[Word, choice("A0", "A1", "A2", "A3", "A4")] = Field("A3", description="size of paper")
@@ -57,7 +59,7 @@ class Print(Section):
     scale: Ratio = Field(1.0, description="20 for 1:20")
     least_wall: Reach = Field(0.0, description="thinner parts are thickened to this after scaling")
     links: Annotated[Word, choice("apart", "joined")] = Field("apart", description="links as bodies or as one")
-    gap: Reach = Field(0.0003, description="how far joined links overlap")
+    gap: Reach = Field(0.0003, description="how far joined links overlap; 0.3 mm unless given")
     bed: Annotated[tuple[Size, Size, Size] | None, BeforeValidator(_bed)] = Field(
         None, description="sizes of the printer's bed"
     )
