@@ -3,6 +3,7 @@
 import subprocess
 import sys
 from collections.abc import Iterator
+from dataclasses import replace
 from functools import cache
 from pathlib import Path
 from typing import Any
@@ -362,3 +363,14 @@ def test_every_kind_of_dimension_is_a_dimension_of_the_file(folder: Path) -> Non
     assert linear[0] == pytest.approx(300, abs=1e-4)
     assert linear[-1] == pytest.approx(6000, abs=1e-4)
     assert any(abs(one - 2300 * 2**0.5) < 1e-3 for one in linear)
+
+
+def test_two_views_of_one_name_are_two_blocks(folder: Path) -> None:
+    result = by_hand()
+    arch = replace(result.pieces[0], views=tuple(replace(result.pieces[0].views[0]) for _ in range(3)))
+    _, data = only_file(replace(result, pieces=(arch,)))
+    path = folder / "views.dxf"
+    path.write_bytes(data)
+    names = [e.dxf.name for e in ezdxf.readfile(path).modelspace().query("INSERT")]  # type: ignore[attr-defined]
+    assert names[0] == "A"
+    assert len(set(names)) == len(names) == 4  # three views and the plan

@@ -19,7 +19,7 @@ from export.picture.labels import Wanted
 from export.picture.make import picture
 from export.picture.screen import WIDTH, screen
 from export.picture.sizes import PAPER
-from export.picture.values import Panel, Picture, Text, around, shifted
+from export.picture.values import SITE_PLAN, Panel, Picture, Text, around, shifted
 from export.picture.views import Drawing, tidy
 from export.picture.wording import Wording, force, significant
 from geom.result import Dimension, Frame, Quantity, Result, Unit, fixed
@@ -168,13 +168,13 @@ def test_titles_stand_in_one_line_along_a_row() -> None:
 
 
 def test_the_plan_names_each_support_once_and_every_piece() -> None:
-    plan = next(panel for panel in drawn("swags").panels if panel.name == "plan")
+    plan = next(panel for panel in drawn("swags").panels if panel.name == SITE_PLAN)
     said = sorted(one.text for group in plan.groups for one in group.texts)
     assert said == ["P1", "P2", "S1", "S2", "S3"]
 
 
 def test_the_plan_is_left_out_where_the_only_piece_is_drawn_in_plan() -> None:
-    assert not any(panel.name == "plan" for panel in drawn("net").panels)
+    assert not any(panel.name == SITE_PLAN for panel in drawn("net").panels)
 
 
 def test_the_notes_say_unit_scale_what_pulls_include_and_a_check_line_of_its_length() -> None:
@@ -208,7 +208,7 @@ def test_links_that_leave_the_plane_are_not_drawn_and_those_in_it_all_are() -> N
     shown = drawn("swags")
     counts = {p.name: sum(len(row.places) for group in p.groups for row in group.links) for p in shown.panels}
     made = {piece.mark: piece.figures.links.count for piece in solved(SWAGS).pieces}
-    assert counts == {"heading": 0, "plan": 0} | made
+    assert counts == {"heading": 0, SITE_PLAN: 0} | made
     assert not any(group.links for panel in drawn("net").panels for group in panel.groups)
 
 

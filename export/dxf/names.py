@@ -26,6 +26,12 @@ class Names:
             self._taken.add(name.casefold())
         return self._given[wanted]
 
+    def fresh(self, name: str) -> str:
+        """Return a name like one that is given already."""
+        found = self._free(name)
+        self._taken.add(found.casefold())
+        return found
+
     def _free(self, name: str) -> str:
         number, free = 1, name
         while free.casefold() in self._taken:

@@ -14,7 +14,7 @@ from export.dxf.pen import Pen
 from export.outputs import Checked, Choices, File, Output
 from export.picture.looks import LAYERS
 from export.picture.make import picture
-from export.picture.values import Box, Group, Panel, Picture, around, box_of, shifted
+from export.picture.values import SITE_PLAN, Box, Group, Panel, Picture, around, box_of, shifted
 from export.picture.views import Drawing, links_drawn
 from export.picture.wording import Wording
 from geom.result import Result
@@ -86,7 +86,10 @@ def document(drawn: Picture, fmt: Format) -> Document:
     for panel in drawn.panels:
         at = _place(drawn, panel.at, fmt)
         for group in panel.groups:
-            _group(doc, group, names.of(group.mark, _view(panel, group)), links, Pen(doc.modelspace(), fmt, LAYERS, at))
+            name = names.of(group.mark, _view(panel, group))
+            if name in doc.blocks:  # two views of one name
+                name = names.fresh(name)
+            _group(doc, group, name, links, Pen(doc.modelspace(), fmt, LAYERS, at))
         space = Pen(doc.modelspace(), fmt, LAYERS, at)
         for placed in panel.dimensions:
             dimension.add(doc, space, placed, panel.per)
@@ -102,7 +105,7 @@ def document(drawn: Picture, fmt: Format) -> Document:
 
 def _view(panel: Panel, group: Group) -> str:
     """Which view a block is of, where it is not the piece's first."""
-    return "" if panel.name == group.mark else panel.name.removeprefix(group.mark).strip()
+    return "" if panel.name == group.mark else panel.name.removeprefix(group.mark).strip(" $")
 
 
 def _group(doc: Document, group: Group, name: str, links: LinkBlocks, space: Pen) -> None:
@@ -124,7 +127,7 @@ def _group(doc: Document, group: Group, name: str, links: LinkBlocks, space: Pen
 
 def _place(drawn: Picture, at: tuple[float, float], fmt: Format) -> tuple[float, float]:
     """Return where a printed point is in the drawing: 0 is the plan's origin, so the site's, else the lower left."""
-    plan = next((panel.at for panel in drawn.panels if panel.name == "plan"), drawn.box[:2])
+    plan = next((panel.at for panel in drawn.panels if panel.name == SITE_PLAN), drawn.box[:2])
     x, y = ((at[axis] - plan[axis]) * fmt.printed for axis in (0, 1))
     return round(x, fmt.decimals) + 0.0, round(y, fmt.decimals) + 0.0
 

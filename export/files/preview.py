@@ -16,7 +16,7 @@ from export.picture import notes as noting
 from export.picture.looks import LOOKS, Colour, Look
 from export.picture.screen import MARGIN, SCREEN, WIDTH, Screen, screen
 from export.picture.text import EM, wrapped
-from export.picture.values import Circle, Floats, Links, Panel, Stroke, Text
+from export.picture.values import SITE_PLAN, Circle, Floats, Links, Panel, Stroke, Text
 from export.picture.wording import counted, listed
 from geom.result import Result
 
@@ -68,7 +68,7 @@ class _Made:
             raise CheckFailed(f"preview.svg is no well-formed XML: {error}") from error
         texts = list(root.iter("{http://www.w3.org/2000/svg}text"))
         said = {"".join(text.itertext()) for text in texts}
-        missing = {panel.groups[0].mark for panel in self.screen.panels if panel.name != "plan"} - said
+        missing = {panel.groups[0].mark for panel in self.screen.panels if panel.name != SITE_PLAN} - said
         if missing:
             raise CheckFailed(f"preview.svg does not name {sorted(missing)}")
         smallest = min(float(text.get("font-size", "0")) for text in texts)
@@ -103,8 +103,8 @@ def _title(result: Result) -> str:
 
 
 def _description(result: Result, shown: Screen) -> str:
-    drawn = [panel.groups[0].mark for panel in shown.panels if panel.name != "plan"]
-    plan = " and the plan of all pieces" if any(panel.name == "plan" for panel in shown.panels) else ""
+    drawn = [panel.groups[0].mark for panel in shown.panels if panel.name != SITE_PLAN]
+    plan = " and the plan of all pieces" if any(panel.name == SITE_PLAN for panel in shown.panels) else ""
     return (
         f"Elevations of {listed(drawn)}{plan}, of {counted(len(result.pieces), 'piece')}, with what tells their shape."
     )

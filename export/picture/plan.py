@@ -10,10 +10,11 @@ from export.picture.labels import Wanted
 from export.picture.looks import LOOKS
 from export.picture.panels import Drawn, Marks, Print, enter, ground_of, printed, with_title
 from export.picture.sizes import Sizes
-from export.picture.values import Floats, Group, Panel, Text, around
+from export.picture.values import SITE_PLAN, Floats, Group, Panel, Text, around
 from export.picture.views import Drawing, Seen, is_plan, seen_on_plan
 from geom.result import PLAN, Piece, Result
 
+_SMALLEST_CROSS = 0.25  # of its size, for rows of held points close together
 _SAME = 1e-6  # m: supports nearer than this on plan are one cross
 
 
@@ -42,9 +43,10 @@ def plan(site: Site, print_: Print, *, marks: Marks = "free") -> Panel:
     per, sizes = print_.per, print_.sizes
     core = printed(around(*(one.box for one in site.seen)), per)
     drawn = [Drawn() for _ in site.pieces]
+    share = float(np.clip(_apart(site) / per / sizes.symbol, _SMALLEST_CROSS, 1.0))
     for mine, held in zip(drawn, site.held, strict=True):
         for at in held.values():
-            mine.paths += symbols.held_point(at / per, sizes)
+            mine.paths += symbols.held_point(at / per, sizes, share=share)
     core = around(core, *(mine.box for mine in drawn))
     wanted_marks = [*_names(site, per), *_supports(site, print_)]
     taken = around(core, *labels.reserved(wanted_marks, sizes))
@@ -60,7 +62,7 @@ def plan(site: Site, print_: Print, *, marks: Marks = "free") -> Panel:
         for piece, shown, mine in zip(site.pieces, site.seen, drawn, strict=True)
     ]
     groups.append(Group("", paths=tuple(loose.paths), circles=tuple(loose.circles), texts=tuple(loose.texts)))
-    panel = Panel("plan", "plan", per, tuple(groups), core=core, box=around(taken, loose.box), dropped=loose.dropped)
+    panel = Panel(SITE_PLAN, "plan", per, tuple(groups), core=core, box=around(taken, loose.box), dropped=loose.dropped)
     return with_title(panel, _title(sizes), sizes)
 
 
@@ -75,6 +77,17 @@ def _held(pieces: Iterable[Piece]) -> Iterable[dict[str, Floats]]:
                 crossed.add(place)
                 mine[pull.support] = pull.at[:2]
         yield mine
+
+
+def _apart(site: Site) -> float:
+    """How far held points are from the next one, as most are, m."""
+    points = np.array([at for held in site.held for at in held.values()])
+    if len(points) < 2:
+        return np.inf
+    from scipy.spatial import cKDTree
+
+    distances = np.asarray(cKDTree(points).query(points, k=2)[0])
+    return float(np.median(distances[:, 1]))
 
 
 def _names(site: Site, per: float) -> Iterable[Wanted]:

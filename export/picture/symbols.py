@@ -26,9 +26,9 @@ def support(at: Floats, sizes: Sizes, *, above: bool) -> list[Path]:
     ]
 
 
-def held_point(at: Floats, sizes: Sizes) -> list[Path]:
-    """Return the cross of a held point on plan."""
-    arm = sizes.symbol * 0.4
+def held_point(at: Floats, sizes: Sizes, *, share: float = 1.0) -> list[Path]:
+    """Return the cross of a held point on plan, at a share of its size where many stand close together."""
+    arm = sizes.symbol * 0.4 * share
     return [
         Path(LOOKS["held point"], at + np.array([[-arm, -arm], [arm, arm]])),
         Path(LOOKS["held point"], at + np.array([[-arm, arm], [arm, -arm]])),

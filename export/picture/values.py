@@ -16,6 +16,7 @@ from export.picture.looks import Look
 
 Floats = NDArray[np.float64]
 Box = tuple[float, float, float, float]  # left, bottom, right, top
+SITE_PLAN = "$plan"  # the name of the plan of all pieces: no piece can have it, as a mark holds no $
 NOTHING: Box = (np.inf, np.inf, -np.inf, -np.inf)
 
 
