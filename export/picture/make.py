@@ -6,7 +6,8 @@ from dataclasses import dataclass
 from export.picture import notes as noting
 from export.picture import plan as planning
 from export.picture.arrange import Arranged, Foot, arrange
-from export.picture.panels import Marks, Print, Subject, elevation, printed, subject
+from export.picture.drawn import printed
+from export.picture.panels import Marks, Print, Subject, elevation, subject
 from export.picture.plan import Site
 from export.picture.scale import Scale, Sheet, scales, sheet
 from export.picture.sizes import PAPER

@@ -6,9 +6,10 @@ from dataclasses import dataclass
 import numpy as np
 
 from export.picture import labels, symbols
+from export.picture.drawn import Drawn, enter, ground_of, printed
 from export.picture.labels import Wanted
 from export.picture.looks import LOOKS
-from export.picture.panels import Drawn, Marks, Print, enter, ground_of, printed, with_title
+from export.picture.panels import Marks, Print, with_title
 from export.picture.sizes import Sizes
 from export.picture.values import SITE_PLAN, Floats, Group, Panel, Text, around
 from export.picture.views import Drawing, Seen, is_plan, seen_on_plan
