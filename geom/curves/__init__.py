@@ -3,6 +3,7 @@
 from geom.curves.arc import Arc
 from geom.curves.base import Along, Curve
 from geom.curves.catenary import Catenary, catenary_points, hanging_strands
+from geom.curves.elastic import ElasticCatenary
 from geom.curves.joined import Joined
 from geom.curves.measure import worst_chord
 from geom.curves.offset import Offset
@@ -14,6 +15,7 @@ __all__ = [
     "Arc",
     "Catenary",
     "Curve",
+    "ElasticCatenary",
     "Joined",
     "Offset",
     "Polyline",

@@ -91,7 +91,7 @@ class Catenary(Curve):
         first = np.sinh(self._middle - self._span / (2 * self.parameter))
         slope = first + s / self.parameter
         secant = np.hypot(1.0, slope)
-        t = self.parameter * _asinh_difference(slope, first, s / self.parameter)
+        t = self.parameter * asinh_difference(slope, first, s / self.parameter)
         z = s * ((slope + first) / (secant + np.hypot(1.0, first)))
         tangents = np.outer(1 / secant, self._plan) + np.outer(self._way * slope / secant, _UP)
         return Along(self.p + np.outer(t, self._plan) + np.outer(self._way * z, _UP), tangents)
@@ -152,7 +152,7 @@ def _middle(span: Array, rise: Array, parameter: Array) -> Array:
     return np.asarray(np.arcsinh(rise / (2 * parameter * np.sinh(span / (2 * parameter)))))
 
 
-def _asinh_difference(upper: Array, lower: float, step: Array) -> Array:
+def asinh_difference(upper: Array, lower: float, step: Array) -> Array:
     """asinh(upper) - asinh(lower) for upper = lower + step, step >= 0, without cancellation.
 
     asinh x = ln(x + c), c = sqrt(1 + x^2). With both of one sign (reflected to be positive, x >= y >= 0)
