@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections import defaultdict
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from typing import cast
 
@@ -144,11 +144,13 @@ def _supports(pieces: Sequence[Piece]) -> tuple[Support, ...]:
     for piece in pieces:
         for pull in piece.pulls:
             pulls[pull.support].append((piece, pull))
-    return tuple(_support(mark, entries) for mark, entries in pulls.items())
+    # once for each piece, not for each support: a curtain of 2,000 strands has as many supports as parts with cases
+    cases = {piece.mark: {case.case: case.standing for case in _cases(piece)} for piece in pieces}
+    return tuple(_support(mark, entries, cases) for mark, entries in pulls.items())
 
 
-def _support(mark: str, entries: Sequence[tuple[Piece, Pull]]) -> Support:
-    standings = {case.case: case.standing for piece, _ in entries for case in _cases(piece)}
+def _support(mark: str, entries: Sequence[tuple[Piece, Pull]], cases: Mapping[str, Mapping[str, Standing]]) -> Support:
+    standings = {case: standing for piece, _ in entries for case, standing in cases[piece.mark].items()}
     standings.setdefault(AS_HUNG, "dead load only")
     heights = [pull.height for _, pull in entries if pull.height is not None]
     height = heights[0] if heights else None
