@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 import math
 
 import mpmath
@@ -17,6 +18,7 @@ spans = st.floats(0.5, 50.0)
 rises = st.floats(-1.0, 1.0)
 slacks = st.floats(0.995, 3.0)
 softs = st.floats(1e-9, 1e-3)
+AWAY = np.array([1.0, -2.0, 5.0])
 
 
 def curve(span: float, rise: float, slack: float, soft: float) -> ElasticCatenary:
@@ -42,7 +44,7 @@ def test_no_chord_is_off_by_more_than_asked(span: float, rise: float, slack: flo
     assert stations[0] == 0.0
     assert stations[-1] == one.length
     points = one.points(within)
-    for k, (p, q) in enumerate(zip(points[:-1], points[1:], strict=True)):
+    for k, (p, q) in enumerate(itertools.pairwise(points)):
         inner = one.at(np.linspace(stations[k], stations[k + 1], 33)).points - p
         way = (q - p) / np.linalg.norm(q - p)
         assert np.linalg.norm(inner - np.outer(inner @ way, way), axis=1).max() <= within * (1 + 1e-6)
@@ -92,14 +94,14 @@ def test_scaled_and_moved_it_is_the_same_curve(
 ) -> None:
     one = curve(span, rise, slack, soft)
     share = np.linspace(0.0, 1.0, 9)
-    large, gone = one.scaled(factor), one.moved(np.array([1.0, -2.0, 5.0]))
+    large, gone = one.scaled(factor), one.moved(AWAY)
     assert large.length == pytest.approx(factor * one.length, rel=1e-10)
     there = one.at(share * one.length).points
     np.testing.assert_allclose(
         large.at(share * large.length).points, factor * there, rtol=0, atol=1e-9 * factor * one.length
     )
     np.testing.assert_allclose(
-        gone.at(share * gone.length).points, there + [1.0, -2.0, 5.0], rtol=0, atol=1e-9 * one.length + 1e-14
+        gone.at(share * gone.length).points, there + AWAY, rtol=0, atol=1e-9 * one.length + 1e-14
     )
 
 
@@ -108,7 +110,7 @@ def test_sizes_that_are_no_member_between_the_ends_are_refused() -> None:
     with pytest.raises(ValueError, match="from the second point"):
         ElasticCatenary(one.p, one.q, one.parameter, 1.01 * one.unstretched, one.softness)
     with pytest.raises(ValueError, match="one plumb line"):
-        ElasticCatenary(one.p, one.p + [0.0, 0.0, 1.0], 1.0, 2.0, 1e-4)
+        ElasticCatenary(one.p, one.p + np.array([0.0, 0.0, 1.0]), 1.0, 2.0, 1e-4)
     with pytest.raises(ValueError, match="softness"):
         ElasticCatenary(one.p, one.q, one.parameter, one.unstretched, 0.0)
 

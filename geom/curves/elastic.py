@@ -137,7 +137,7 @@ class ElasticCatenary(Curve):
 
     @cached_property
     def _first(self) -> float:
-        """y at the first end: z there is (y0 + y1)/2 (soft L + 2 tanh u)."""
+        """Vertical part y at the first end: z there is (y0 + y1)/2 (soft L + 2 tanh u)."""
         rise = float(self.q[2] - self.p[2])
         middle = rise / (2 * np.tanh(self._half_angle) + self.softness * self.unstretched)
         return float(middle) - 0.5 * self.unstretched
