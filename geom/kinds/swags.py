@@ -92,8 +92,14 @@ def _is_point(kind: Any) -> bool:  # noqa: ANN401 - any type expression
     return get_origin(kind) is tuple or any(_is_point(part) for part in get_args(kind))
 
 
+_EACH = "one value, a list of one for each strand, or { first, last }"
+
+
 def _facts() -> dict[str, Any]:
-    fields = {name: (_values(name), Field(None, description=Hanging.model_fields[name].description)) for name in FACTS}
+    fields = {
+        name: (_values(name), Field(None, description=f"{Hanging.model_fields[name].description}: {_EACH}"))
+        for name in FACTS
+    }
     beside = {name: (Hanging.model_fields[name].annotation, Hanging.model_fields[name]) for name in _BESIDE_FACTS}
     return fields | beside
 
