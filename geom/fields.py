@@ -8,8 +8,9 @@ from __future__ import annotations
 
 import math
 import re
+import unicodedata
 from collections.abc import Callable, Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from typing import Annotated, Any, ClassVar
 
 from pydantic import BaseModel, BeforeValidator, ConfigDict, Field, ValidationInfo
@@ -67,6 +68,15 @@ def bare_key(name: str) -> str:
     return name if re.fullmatch(r"[A-Za-z0-9_-]+", name) else f'"{name}"'
 
 
+MOST_LENGTH = 1e8
+"""Metres: over any coordinate of any survey grid, and where doubles still tell a tenth of a micrometre apart."""
+LEAST_LENGTH = 1e-9
+"""Metres: of a size, under any that is made."""
+_BEYOND = 1e15
+"""In SI. No quantity of anything built is over this, nor one that must be over nought under its inverse: a unit slipped
+there, and figures worked out from it would leave what a double holds."""
+
+
 @dataclass(frozen=True)
 class Limits:
     """Bounds of a quantity in SI, with the words that an error line says them in."""
@@ -76,6 +86,7 @@ class Limits:
     below: float = math.inf
     most: float = math.inf
     words: str = ""
+    tiny: float = 1.0 / _BEYOND  # of what must be over nought: under this a unit slipped
 
     def check(self, value: float, raw: object) -> float:
         """Return the value.
@@ -85,6 +96,8 @@ class Limits:
         ValueError
             If it is out of bounds; the text gives the value as read and the bounds.
         """
+        if abs(value) > _BEYOND or (self.above == 0.0 and 0.0 < value < self.tiny):
+            raise ValueError(f"{say(raw)} is beyond all that is built; look to its unit, or give a likely value")
         if self.above < value < self.below and self.least <= value <= self.most:
             return value
         raise ValueError(f"{say(raw)} is out of range; give {self.words}")
@@ -99,29 +112,39 @@ def _bare(parse: Callable[[Any], float], limits: Limits) -> BeforeValidator:
     return BeforeValidator(lambda raw: limits.check(parse(raw), raw))
 
 
+def _metres(raw: Any, unit: str) -> float:  # noqa: ANN401 - as the file has it
+    metres = units.length(raw, unit)
+    if abs(metres) > MOST_LENGTH:
+        raise ValueError(f"{say(raw)} is over {MOST_LENGTH / 1e3:g} km; look to its unit, or give a likely length")
+    return metres
+
+
 def _length(limits: Limits) -> BeforeValidator:
-    def read(raw: Any, info: ValidationInfo) -> float:  # noqa: ANN401 - as the file has it
-        return limits.check(units.length(raw, known(info).unit), raw)
+    def read(raw: Any, info: ValidationInfo) -> float:  # noqa: ANN401
+        return limits.check(_metres(raw, known(info).unit), raw)
 
     return BeforeValidator(read)
 
 
 def _elevation(raw: Any, info: ValidationInfo) -> float:  # noqa: ANN401
     context = known(info)
-    return units.length(raw, context.unit) - context.origin[2]
+    return _metres(raw, context.unit) - context.origin[2]
 
 
 def _point(raw: Any, info: ValidationInfo) -> Point:  # noqa: ANN401
     context = known(info)
     if not isinstance(raw, list | tuple) or len(raw) != 3:
         raise ValueError(f"{say(raw)} is no point; give [x, y, z]")
-    x, y, z = (units.length(value, context.unit) - o for value, o in zip(raw, context.origin, strict=True))
+    x, y, z = (_metres(value, context.unit) - o for value, o in zip(raw, context.origin, strict=True))
     return (x, y, z)
 
 
 Length = Annotated[float, _length(NO_LIMITS)]
-Size = Annotated[float, _length(POSITIVE)]
+Size = Annotated[float, _length(replace(POSITIVE, tiny=LEAST_LENGTH))]
 Reach = Annotated[float, _length(NOT_NEGATIVE)]
+FINEST = Limits(least=1e-6, words="0.001 mm or more")
+"""Of drawn curves: a tenth of that is no file's business, and points and facets grow without bound towards nought."""
+Within = Annotated[float, _length(FINEST)]
 Elevation = Annotated[float, BeforeValidator(_elevation)]
 PointField = Annotated[Point, BeforeValidator(_point)]
 Force = Annotated[float, _bare(units.force, NO_LIMITS)]
@@ -178,13 +201,24 @@ def mark(raw: Any) -> str:  # noqa: ANN401
 Mark = Annotated[str, BeforeValidator(mark)]
 
 
-def _text(raw: Any) -> str:  # noqa: ANN401
+def one_line(raw: Any) -> str:  # noqa: ANN401
+    """Return a text on one line, of characters that every file can hold.
+
+    Raises
+    ------
+    ValueError
+        If it is no text, or holds a control character or one that is none at all: XML has no way of writing those.
+    """
     if not isinstance(raw, str):
         raise ValueError(f"{say(raw)} is no text; put it in quotes")
-    return raw
+    line = " ".join(raw.split())
+    odd = next((c for c in line if unicodedata.category(c) == "Cc" or c in "\ufffe\uffff"), None)
+    if odd is not None:
+        raise ValueError(f"{say(raw)} holds the character U+{ord(odd):04X}, which cannot be printed; remove it")
+    return line
 
 
-Text = Annotated[str, BeforeValidator(_text)]
+Text = Annotated[str, BeforeValidator(one_line)]
 
 
 def _flag(raw: Any) -> bool:  # noqa: ANN401

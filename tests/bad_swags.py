@@ -138,7 +138,7 @@ BAD_ROWS = [
     Bad("pull in metres", ROW, "sag = [600, 650, 700, 750]", 'pull = "3 m"', "pull", "length"),
     Bad("parity unknown", ROW, 'parity = "any"', 'parity = "odds"', "parity", "did you mean 'odd'"),
     Bad("round unknown", ROW, 'round = "nearest"', 'round = "upp"', "round", "did you mean 'up'"),
-    Bad("links over a million", ROW, "copies = 2", "copies = 1000", "count", "a design has at most 1000000", "count"),
+    Bad("links over a million", ROW, "copies = 2", "copies = 1000", "copies", "a design has at most 1000000"),
     Bad("copies of nought", ROW, "copies = 2", "copies = 0", "copies", "from 1"),
     Bad("fitting unknown", ROW, 'from = "cup", to', 'from = "cap", to', "fittings.from", "did you mean 'cup'"),
     Bad("fittings a text", ROW, 'fittings = { from = "cup", to = ["cup", 5] }', 'fittings = "cup"', "fittings", "table"),

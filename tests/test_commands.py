@@ -391,7 +391,9 @@ def test_what_a_design_holds_cannot_reach_the_terminal_as_an_order(tmp_path: Pat
     path = tmp_path / "court.toml"
     path.write_text(GOOD.replace("A swag", "\\u001b[2J\\u0007 bell"), encoding="utf-8")
     made = run("check", path)
-    assert made.exit_code == 0
+    assert made.exit_code == 2
+    assert "court.toml:1: title: " in made.output
+    assert "U+001B" in made.output
     assert "\x1b" not in made.output
     assert "\x07" not in made.output
 

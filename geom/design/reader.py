@@ -17,7 +17,7 @@ from pydantic import ValidationError
 from geom.design.positions import Positions, index
 from geom.design.syntax import syntax_problem
 from geom.errors import Problem, near, say
-from geom.fields import Feature, Known, Section, Unusable, mark
+from geom.fields import Feature, Known, Section, Unusable, mark, one_line
 from geom.registry import Path, kinds
 from geom.setting.fittings import Fitting, FittingEntry
 from geom.setting.materials import MaterialEntry, user_material
@@ -36,6 +36,7 @@ NAMED: dict[str, type[Section]] = {
 """In the order in which they are read: a stock may be of a material of the design's own."""
 
 MOST_PIECES = 100_000
+_LONGEST_TITLE = 200  # characters: two lines over the largest sheet
 
 S = TypeVar("S", bound=Section)
 
@@ -95,11 +96,12 @@ class _Reader:
         return None
 
     def title(self, name: str) -> str:
-        title = self.raw.get("title", name)
-        if not isinstance(title, str):
-            self.add(("title",), "", "title", f"{say(title)} is no text; put it in quotes")
+        """Return the design's title; its name where it has none."""
+        try:
+            return one_line(self.raw.get("title", ""))[:_LONGEST_TITLE] or name
+        except ValueError as error:
+            self.add(("title",), "", "title", str(error))
             return name
-        return " ".join(title.split())[:200] or name
 
     def top_level(self, tables: Iterable[str]) -> None:
         """Complain of every key of the file itself that no reader knows."""
@@ -352,7 +354,7 @@ def read(text: str, name: str) -> Reading:
     models = {entry.name: entry.model for entry in kinds().values()}
     reader.top_level(models)
     unit = reader.unit()
-    title = reader.title(name)
+    title = reader.title("".join(c if c.isprintable() else " " for c in name))
     known = Known(unit or "mm")
     sections = {table: reader.section(table, model, known) for table, model in SECTIONS.items()}
     site = sections["site"]

@@ -3,19 +3,30 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass
 
 import numpy as np
 
+from geom.fields import MOST_LENGTH
 from geom.hang.asked import Asked
-from geom.hang.intent import Made, Wish
+from geom.hang.intent import FactName, Made, Wish
 from geom.registry import Refusal, refuse
 from geom.setting.options import Setting
 
 MOST_LINKS = 1_000_000
+AT_ONE_POINT = 1e-6
+"""Metres: supports no farther apart are at one point, and on plan on one plumb line; nobody sets them out finer."""
 LEAST_SLACK = 1e-13
 """Length beyond the chord over the chord. Under it doubles cannot tell a taut member from one that is too short, and
 its pull, falling with the root of the slack, is over a million times its weight."""
+
+
+_EASE: Mapping[FactName, tuple[str, str]] = {
+    "length": ("a longer one", "a shorter one"), "links": ("more links", "fewer links"), "slack": ("more", "less"),
+    "sag": ("more", "less"), "lowest": ("a lower point", "a higher point"), "pull": ("less", "more"),
+}  # fmt: skip
+"""What to give of each fact where a member comes out too taut, and where it comes out too long."""
 
 
 def refusals(members: Sequence[Asked], wish: Wish, made: Made, setting: Setting) -> dict[int, Refusal]:
@@ -31,31 +42,61 @@ def refusals(members: Sequence[Asked], wish: Wish, made: Made, setting: Setting)
     no_links = np.array([member.fact == "links" and not member.stock.counted for member in members])
     cut = made.made.length - wish.takes + np.array([member.grips for member in members])
     nothing = ~np.isfinite(wish.pitch) & ~(cut >= setting.shop.step)
-    doubtful = taut | many | bare | odd | no_links | nothing | ~np.isfinite(made.made.length)
+    nowhere = (chord < AT_ONE_POINT) | ~(made.wished.length <= MOST_LENGTH)
+    doubtful = taut | many | bare | odd | no_links | nothing | nowhere
     found = {}
     for number in np.flatnonzero(doubtful).tolist():
-        found[number] = _reason(members[number], float(chord[number]), int(made.least[number]), setting)
-    return found
+        curve = _Curve(float(chord[number]), float(made.wished.length[number]), int(made.least[number]))
+        found[number] = _reason(members[number], curve, setting)
+    return found or _too_many(members, made)
+
+
+def _too_many(members: Sequence[Asked], made: Made) -> dict[int, Refusal]:
+    """Return the refusal of the member with which a design has too many links, and no reason for the others' absence.
+
+    None of them is made then: that alone would take the machine's memory.
+    """
+    links = np.cumsum(made.count * np.array([member.copies for member in members], dtype=np.int64))
+    first = int(np.searchsorted(links, MOST_LINKS, side="right"))
+    if first == len(members):
+        return {}
+    key = "copies" if members[first].copies > 1 else members[first].fact
+    text = f"comes to {links[first]} links up to here, copies included; a design has at most {MOST_LINKS}: give fewer"
+    return dict.fromkeys(range(len(members)), Refusal(())) | {first: refuse(key, text)}
+
+
+@dataclass(frozen=True)
+class _Curve:
+    """What is known of a doubtful member: its chord, the length of the wished curve (NaN: none), m, fewest links."""
+
+    chord: float
+    length: float
+    least: int
+
+    @property
+    def taut(self) -> bool:
+        """Whether the wished curve is one, and not longer than the chord to be told from it."""
+        return self.length - self.chord <= LEAST_SLACK * self.chord
 
 
 def _has_parity(count: int, parity: str) -> bool:
     return parity == "any" or count % 2 == (1 if parity == "odd" else 0)
 
 
-def _reason(member: Asked, chord: float, least: int, setting: Setting) -> Refusal:
+def _reason(member: Asked, curve: _Curve, setting: Setting) -> Refusal:
     """Return the first reason that applies, in the order in which a person would mend them."""
-    return next(_reasons(member, chord, least, setting))
+    return next(_reasons(member, curve, setting))
 
 
-def _reasons(member: Asked, chord: float, least: int, setting: Setting) -> Iterator[Refusal]:
-    say, fact, value = setting.stated, member.fact, member.value
-    if chord == 0.0:
+def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal]:
+    say, fact, value, chord = setting.stated, member.fact, member.value, curve.chord
+    if chord < AT_ONE_POINT:
         yield refuse("to", f"is the same point as `from`, {_point(member, setting)}; give two different supports")
     if member.start.at[:2] == member.end.at[:2] and fact in ("sag", "pull"):
         text = "has no meaning between supports on one plumb line, where the pull is 0"
         yield refuse(fact, f"{text}; give length, links, slack or lowest")
     if fact == "links":
-        yield _links(member, chord, least, setting)
+        yield _links(member, chord, curve.least, setting)
     if fact == "length" and not value > chord:
         found = "exactly" if value == chord else "shorter than"
         text = f"{say(value)} is {found} the {say(chord)} between its supports"
@@ -66,13 +107,19 @@ def _reasons(member: Asked, chord: float, least: int, setting: Setting) -> Itera
     if fact == "lowest" and not value < member.lower:
         text = f"{say(value)} is not under the lower support at {say(member.lower)}"
         yield refuse("lowest", f"{text}; give less than that")
-    if member.stock.counted:
-        yield _whole_links(member, chord, least, setting)
+    more, less = _EASE[fact]
+    if not curve.length <= MOST_LENGTH and not (fact == "pull" and value > member.stock.weight * chord):
+        yield refuse(fact, f"makes the member longer than {say(MOST_LENGTH)}, over any measure; give {less}")
+    if member.stock.counted and not curve.taut:
+        yield _whole_links(member, curve, setting)
     if member.takes - member.grips >= chord:
         text = f"take {say(member.takes)}, which leaves no {member.stock.kind} to cut"
         yield refuse("fittings", f"{text} over {say(chord)}; give shorter fittings or a longer member")
+    if curve.length - member.takes + member.grips < setting.shop.step:
+        text = f"leaves less to cut than the step of {say(setting.shop.step)} that lengths are rounded to"
+        yield refuse(fact, f"{text}; give {more}, or a finer `step` in [shop]")
     text = f"leaves the member so taut over {say(chord)} that its pull has no figure"
-    yield refuse(fact, f"{text}; give it more slack")
+    yield refuse(fact, f"{text}; give {more}")
 
 
 def _links(member: Asked, chord: float, least: int, setting: Setting) -> Refusal:
@@ -100,11 +147,13 @@ def _reaching(member: Asked, chord: float) -> int:
     return least if _has_parity(least, member.parity) else least + 1
 
 
-def _whole_links(member: Asked, chord: float, least: int, setting: Setting) -> Refusal:
-    reaching = max(least, _reaching(member, chord))
-    if reaching > MOST_LINKS:
-        return refuse(member.fact, f"needs over {MOST_LINKS} links; give a longer pitch or a shorter member")
-    pitch = float(member.stock.pitch or math.nan)
+def _whole_links(member: Asked, curve: _Curve, setting: Setting) -> Refusal:
+    chord, pitch = curve.chord, float(member.stock.pitch or math.nan)
+    reaching = max(curve.least, _reaching(member, chord))
+    wanted = max(reaching, round((curve.length - member.takes) / pitch))
+    if wanted > MOST_LINKS:
+        text = f"takes {wanted} links, and {MOST_LINKS} are the most of a design"
+        return refuse(member.fact, f"{text}; give a shorter member or a longer pitch")
     shorter = (reaching - (1 if member.parity == "any" else 2)) * pitch + member.takes
     if member.rounding == "down":
         return refuse(
