@@ -152,6 +152,15 @@ def test_a_tube_has_pappus_volume_and_surface() -> None:
     assert mesh.area - ends == pytest.approx(2.1405851819, rel=2e-3)
 
 
+@pytest.mark.parametrize("within", [1e-4, 1e-2, 10.0])
+def test_a_tube_far_smaller_than_the_tolerance_keeps_its_volume(within: float) -> None:
+    # A tenth of the hundredth that solids are held to, on curves that turn by two and a half and by six radians.
+    for curve in (catenary(1.5, 1e-3), Arc(at(1, 2, 3), 1e-3, X, Y, 0.0, 2 * np.pi)):
+        mesh = Sweep(curve, 1e-4).mesh(within)
+        assert mesh.is_watertight
+        assert mesh.volume == pytest.approx(np.pi * 1e-8 * curve.length, rel=4e-3)
+
+
 @pytest.mark.parametrize(("sides", "chords", "volume"), [(24, 40, 0.0846381183), (12, 20, 0.0817235707)])
 def test_a_mitred_tube_has_the_polygons_volume(sides: int, chords: int, volume: float) -> None:
     # (m/2) r^2 sin(2 pi/m) times the polyline's length, equal steps on plan; u = 1.5, a = 1, r = 0.08.
