@@ -7,6 +7,7 @@ from dataclasses import replace
 from pathlib import Path
 
 import numpy as np
+from numpy.typing import NDArray
 
 from export.outputs import Checked, CheckFailed, Choices, File, Output
 from export.printing.prepare import Printed, Wishes, prepared
@@ -21,6 +22,8 @@ MOST_REAL_LINKS = 2000
 """Links of a design that are made one by one unless more are asked for: each is some 700 facets, 35 kB of file."""
 _VOLUME = 0.01
 """Share of the true volume that a print's facets may be off by; sections keep their area, so they are far nearer."""
+_STRAIGHT = 1e-9
+"""Radians of turn from link to link under which a line is straight: rounding alone turns it by some 1e-15."""
 _MM3 = 1e9
 
 
@@ -36,14 +39,22 @@ def _too_many(result: Result, choices: Choices) -> bool:
 
 
 def as_tubes(body: Body) -> Body:
-    """Return a body with each run of links as a tube of the chain's width through the links' middles."""
+    """Return a body with each run of links as a tube of the chain's width through their middles."""
     if isinstance(body, Union):
         return replace(body, bodies=tuple(as_tubes(part) for part in body.bodies))
     if isinstance(body, Links) and len(body.places) > 1:
         half = body.turns[[0, -1], :, 0] * (body.link.pitch / 2)
-        ends = body.places[0] - half[0], body.places[-1] + half[1]
-        return Sweep(Polyline(np.vstack([ends[0], body.places, ends[1]])), body.link.width / 2)
+        line = np.vstack([body.places[0] - half[0], body.places, body.places[-1] + half[1]])
+        return Sweep(Polyline(_corners(line)), body.link.width / 2)
     return body
+
+
+def _corners(line: NDArray[np.float64]) -> NDArray[np.float64]:
+    """The corners of a line (n, 3) that it turns at: a plumb strand has none but its ends."""
+    ways = np.diff(line, axis=0)
+    ways /= np.linalg.norm(ways, axis=1, keepdims=True)
+    turns = np.linalg.norm(np.diff(ways, axis=0), axis=1) > _STRAIGHT
+    return np.asarray(line[np.concatenate([[True], turns, [True]])])
 
 
 def _wishes(result: Result) -> Wishes:

@@ -64,6 +64,7 @@ _UNITS = {
     "m3": "m³",
     "Nm": "N·m",
     "N_per_m": "N/m",
+    "kg_per_m": "kg/m",
     "kg_per_m3": "kg/m³",
     "per_K": "/K",
     "C": "°C",
