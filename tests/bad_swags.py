@@ -105,6 +105,8 @@ BAD_ROWS = [
     Bad("rail_to at rail_from", ROW, "rail_to = [[2400, 0, 3600], [2400, 300, 3600]]", "rail_to = [[0, 0, 3600], [0, 300, 3600]]", "rail_to", "the same point"),
     Bad("rail_to of text", ROW, "rail_to = [[2400, 0, 3600],", 'rail_to = [[2400, 0, "high"],', "rail_to[1]", "is no length"),
     Bad("rail_to empty", ROW, "rail_to = [[2400, 0, 3600], [2400, 300, 3600]]", "rail_to = []", "rail_to", "at least two different points"),
+    Bad("branch without its fact", ROW, "copies = 2", 'branch = "deep"\ncopies = 2', "branch", "goes with `end_pull` alone"),
+    Bad("branch of neither name", ROW, "copies = 2", 'branch = "long"\ncopies = 2', "branch", "is not known here"),
     Bad("count absent", ROW, "count = 4\n", "", "count", "is missing", SWAGS_HEADER),
     Bad("count of nought", ROW, "count = 4", "count = 0", "count", "from 1"),
     Bad("count of one", ROW, "count = 4", "count = 1", "count", "give 2 or more"),

@@ -3,17 +3,24 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Sequence
 
 from geom.hang.asked import Asked
 from geom.hang.figures import HangingFigures
-from geom.result import Caution
+from geom.result import Case, Caution
 from geom.setting.options import Setting
 
 _PRACTICE = "common practice"
 
 
-def cautions(member: Asked, figures: HangingFigures, wished: float, setting: Setting) -> tuple[Caution, ...]:
-    """Return the cautions that apply to one member; `wished` is the length that its fact asked for, m."""
+def cautions(
+    member: Asked, figures: HangingFigures, wished: float, setting: Setting, *, cases: Sequence[Case] | None = None
+) -> tuple[Caution, ...]:
+    """Return the cautions that apply to one member.
+
+    `wished` is the length that its fact asked for, m; `cases` what it does when it stretches, None where no stretch was
+    looked at.
+    """
     weight = member.stock.weight * figures.pin_to_pin
     found = [
         Caution(
@@ -22,13 +29,11 @@ def cautions(member: Asked, figures: HangingFigures, wished: float, setting: Set
             "a static hang. A licensed engineer checks supports and fixings; local codes govern.",
             _PRACTICE,
         ),
-        Caution(
-            "no stretch", member.mark,
-            "Solved without stretch or change of temperature: near taut, both change sag and pull.",
-            "Irvine, Cable Structures, 1981, ch. 1",
-        ),
     ]  # fmt: skip
     found += _stock(member, figures)
+    found += _stiff(member, setting, stretches=cases is not None)
+    if member.fact == "length" and figures.span:
+        found.append(_given_length(member, figures, setting))
     if weight and figures.pull_horizontal > weight:
         found.append(
             Caution(
@@ -47,9 +52,50 @@ def cautions(member: Asked, figures: HangingFigures, wished: float, setting: Set
                 f"{_length(member.ground.at_least, setting)} wanted.",
             )
         )
+    cases = cases or ()
+    lost = [case.case for case in cases if math.isnan(case.sag)]
+    if lost:
+        text = f"Too short to reach from support to support in the case {', '.join(lost)}: no stretch of it is known."
+        found.append(Caution("does not reach", member.mark, text))
+    low = [case for case in cases if case.clearance < (member.ground.at_least if member.ground else -math.inf)]
+    if low and not (figures.clearance < member.ground.at_least if member.ground else True):
+        worst = min(low, key=lambda case: case.clearance)
+        text = (
+            f"The least clearance in the case {worst.case}, {_length(worst.clearance, setting)}, is under the "
+            f"{_length(member.ground.at_least if member.ground else math.nan, setting)} wanted."
+        )
+        found.append(Caution("clearance by case", member.mark, text))
     if out_of_reach := _out_of_reach(member, figures, wished, setting):
         found.append(out_of_reach)
     return tuple(found)
+
+
+def _stiff(member: Asked, setting: Setting, *, stretches: bool) -> list[Caution]:
+    """What is not known of how the stock gives."""
+    found, stock, source = [], member.stock, "Irvine, Cable Structures, 1981, ch. 1"
+    if not stretches:
+        return [Caution("no stretch", member.mark, "Solved without stretch or change of temperature.", source)]
+    if stock.EA is None:
+        text = f"Solved without stretch: {stock.name} has no modulus. Near taut, stretch changes sag and pull."
+        found.append(Caution("no stretch", member.mark, text, source))
+    if stock.expansion is None and set(setting.temperatures) != {setting.shop.temperature}:
+        text = (
+            f"Solved without change of temperature: {stock.name} has no expansion. Near taut, it changes sag and pull."
+        )
+        found.append(Caution("no expansion", member.mark, text, source))
+    return found
+
+
+def _given_length(member: Asked, figures: HangingFigures, setting: Setting) -> Caution:
+    """A length is often worked out as span plus sag, which gives a far greater sag: said wherever a length is given."""
+    rule = member.value - figures.span
+    text = (
+        f"A length of {setting.stated(member.value)} over a span of {setting.stated(figures.span)} gives a sag of "
+        f"{_length(figures.sag, setting)}"
+    )
+    if rule > 0.0 and abs(rule - figures.sag) > 0.02 * figures.sag:
+        text += f", and not the {_length(rule, setting)} by which it is longer: length is not span plus sag"
+    return Caution("what the length gives", member.mark, f"{text}.", "the catenary's own relation")
 
 
 def _stock(member: Asked, figures: HangingFigures) -> list[Caution]:

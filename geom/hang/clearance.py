@@ -1,40 +1,97 @@
-"""Least height of a hanging curve over a ground given as a profile, in closed form."""
+"""Least height of hanging curves over ground given as profiles, in closed form, all members of a design at once."""
 
 from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
 
+from geom.hang.stretched import Stretched
+
 Floats = NDArray[np.float64]
 
 
-def closest_places(profile: Floats, span: float, vertex_at: float, parameter: float) -> Floats:
-    """Return the plan distances at one of which a catenary comes nearest to the ground.
+@dataclass(frozen=True, eq=False)
+class Grounds:
+    """Straight stretches of ground under n members, K in all, those of one member together.
+
+    of : (K,) the member's number, rising
+    near, far : (K, 2) plan distance from the member's `from` end and elevation over it, m
+    base : (n,) elevation of `from`, m
+    """
+
+    of: NDArray[np.intp]
+    near: Floats
+    far: Floats
+    base: Floats
+
+
+def grounds(profiles: Sequence[Floats | None], base: Floats) -> Grounds:
+    """Return the stretches of all members' ground profiles, (m, 2) of plan distance and elevation; None: no ground."""
+    given = [(number, profile) for number, profile in enumerate(profiles) if profile is not None]
+    of = np.repeat([number for number, _ in given], [len(profile) - 1 for _, profile in given]).astype(np.intp)
+    near = np.concatenate([np.empty((0, 2)), *(profile[:-1] for _, profile in given)])
+    far = np.concatenate([np.empty((0, 2)), *(profile[1:] for _, profile in given)])
+    lift = np.stack([np.zeros(len(of)), base[of]], axis=1)
+    return Grounds(of, near - lift, far - lift, base)
+
+
+def least_over(hang: Stretched, ground: Grounds, *, moved: float = 0.0) -> tuple[Floats, Floats]:
+    """Return the least height over the ground and its plan distance from `from`, both (n,) m; NaN without ground.
 
     Parameters
     ----------
-    profile : ndarray, shape (m, 2)
-        Ground under the member: plan distance from its `from` end (increasing) and elevation, m.
-    span : float
-        Plan distance between the supports, m.
-    vertex_at, parameter : float
-        Plan distance of the vertex from the `from` end, and a = H/w, m.
-
-    Returns
-    -------
-    ndarray, shape (k,)
-        Plan distances, m; empty where no ground is under the member.
+    hang : Stretched
+        Solved members, of shape (n,).
+    ground : Grounds
+        Ground under them.
+    moved : float
+        How far `from` has come towards `to` since the ground was measured from it, m.
 
     Notes
     -----
     Over one straight stretch of ground the gap between it and the curve is convex, so it is least where the curve runs
-    parallel to the ground, x = vertex + a asinh(slope), or at an end of the stretch.
+    parallel to the ground, V/H its slope, or at an end of the stretch.
     """
-    slopes = np.diff(profile[:, 1]) / np.diff(profile[:, 0])
-    parallel = np.clip(vertex_at + parameter * np.arcsinh(slopes), profile[:-1, 0], profile[1:, 0])
-    places = np.concatenate([parallel, profile[:, 0], [0.0, span]])
-    inside = (places >= max(0.0, profile[0, 0])) & (places <= min(span, profile[-1, 0]))
-    return np.unique(places[inside])
+    gap, place = np.full(hang.span.shape, np.nan), np.full(hang.span.shape, np.nan)
+    if not ground.of.size:
+        return gap, place
+    of, member = ground.of, taken(hang, ground.of)
+    first, last = ground.near[:, 0] - moved, ground.far[:, 0] - moved
+    slope = (ground.far[:, 1] - ground.near[:, 1]) / (last - first)
+    low, high = np.maximum(first, 0.0), np.minimum(last, member.span)
+    at = np.stack([_parallel(member, slope), low, high], axis=1)
+    at = np.clip(at, low[:, np.newaxis], np.maximum(low, high)[:, np.newaxis])
+    gaps = elevation(member, at) - (ground.near[:, 1, np.newaxis] + slope[:, np.newaxis] * (at - first[:, np.newaxis]))
+    gaps[high < low] = np.nan
+    order = np.lexsort((gaps.ravel(), np.repeat(of, 3)))
+    numbers, firsts = np.unique(np.repeat(of, 3)[order], return_index=True)
+    chosen = order[firsts]
+    gap[numbers] = gaps.ravel()[chosen]
+    place[numbers] = np.where(np.isnan(gap[numbers]), np.nan, at.ravel()[chosen] + moved)
+    return gap, place
+
+
+def _parallel(member: Stretched, slope: Floats) -> Floats:
+    """Plan distance to where members run at a slope: V = H slope."""
+    arc = np.clip(member.parameter * slope + member.pulls.vertical_from / member.weight, 0.0, member.length)
+    return member.at_arc(arc[:, np.newaxis]).plan[:, 0]
+
+
+def elevation(member: Stretched, at: Floats) -> Floats:
+    """Return the elevations over `from` at plan distances (n, k), m; of strands on a plumb line the lowest point's."""
+    rise = member.at_arc(member.arc_at(at)).elevation
+    return np.where((member.span > 0.0)[:, np.newaxis], rise, member.lowest[:, np.newaxis])
+
+
+def taken(hang: Stretched, of: NDArray[np.intp]) -> Stretched:
+    """Return some of the members, in the order of their numbers."""
+    return Stretched(
+        hang.span[of], hang.level_difference[of], hang.length[of], hang.excess[of], hang.weight[of],
+        hang.stiffness[of], hang.u[of],
+    )  # fmt: skip
 
 
 def stretch(profile: Floats, start: float, end: float) -> Floats:

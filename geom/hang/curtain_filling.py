@@ -18,8 +18,8 @@ from geom.hang.curtain import AskedCurtain, CurtainFigures, MadeCurtain, StrandF
 from geom.hang.curtain_solids import solids
 from geom.hang.curtain_views import hem_line, labels, view
 from geom.hang.figures import LinksFigures, Neighbour
-from geom.hang.filling import used
 from geom.hang.links import ends_same_way, overall
+from geom.hang.shopwork import used
 from geom.hang.together import by_stock, one_used, worst
 from geom.result import (
     NAN,
@@ -94,7 +94,7 @@ def _strands(asked: AskedCurtain, curtain: MadeCurtain, setting: Setting) -> Ite
         "length": made.length, "lowest": made.lowest, "over": made.over_hem, "pull": made.pull,
         "counts": counts, "lows": lows,
     }  # fmt: skip
-    sources = {stock.name: used(stock) for stock in asked.kinds}
+    sources = {stock.name: used(stock, stretches=False) for stock in asked.kinds}
     for number, row in enumerate(zip(*(column.tolist() for column in columns.values()), strict=True)):
         at = dict(zip(columns, row, strict=True))
         yield _strand(asked, number, tops[number], at, sources[asked.stocks[number].name], setting)

@@ -29,6 +29,35 @@ class LinksFigures:
 
 
 @dataclass(frozen=True)
+class SagPerSupport:
+    """Change of the greatest sag for a small move of one support: outward along the span, and upward; m/m."""
+
+    from_out: float
+    from_up: float
+    to_out: float
+    to_up: float
+
+
+@dataclass(frozen=True)
+class Band:
+    """What may come out as hung where all that is left open errs one way: null where it would not reach.
+
+    `shorter` and `longer` are what cutting, or the pitch of the links, may make of the length; the greatest sag has
+    the supports nearer by what they may give.
+    """
+
+    shorter: Metres
+    longer: Metres
+    supports_nearer: Metres
+    sag_least: Metres
+    sag_greatest: Metres
+    lowest_least: Metres
+    lowest_greatest: Metres
+    clearance_least: Metres
+    clearance_greatest: Metres
+
+
+@dataclass(frozen=True)
 class HangingFigures:
     """Figures of one member as hung; elevations and points in the design's axes."""
 
@@ -56,3 +85,6 @@ class HangingFigures:
     capacity_used: float = NAN  # greatest end pull over the breaking load, only where the user certifies one
     lowest_at: Metres = NAN  # plan distance of the lowest point from the `from` support
     sag_at: Metres = NAN  # plan distance of the greatest sag from the `from` support
+    sag_per_kelvin: Metres = NAN  # change of the greatest sag for a kelvin
+    sag_per_support: SagPerSupport | None = None
+    band: Band | None = None

@@ -9,9 +9,9 @@ import numpy as np
 from numpy.typing import NDArray
 
 from geom.hang.figures import HangingFigures
-from geom.hang.filling import Shape, dimensions, drawn
+from geom.hang.shape import Shape, dimensions, drawn
 from geom.hang.together import one_solid, worst
-from geom.hang.unfolded import unfolded_solid
+from geom.hang.unfolded import unfolded_shape, unfolded_solid
 from geom.result import (
     Z_UP,
     Caution,
@@ -144,9 +144,7 @@ def _elevation(bays: Sequence[Piece]) -> View:
     x = 0.0
     for number, bay in enumerate(bays):
         figures: HangingFigures = bay.figures
-        start = np.array([0.0, 0.0, bay.labels[0].at[2]])
-        end = np.array([figures.span, 0.0, bay.labels[1].at[2]])
-        shape = Shape(start, end, figures.parameter, figures.pin_to_pin).unfolded(x)
+        shape = unfolded_shape(bay, x)
         lines += drawn(bay.mark, shape)
         solids += [unfolded_solid(solid, bay.frame, shape) for solid in bay.solids]
         bay_dimensions += _bay_dimensions(shape, figures)

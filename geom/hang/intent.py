@@ -1,7 +1,9 @@
 """From what a user wants of a hanging member to what can be made: the wished curve, whole links, the curve again.
 
-Arrays of members in, arrays out: all hangings of a design are one call. A member is asked for by one fact; with a chain
-the count of links is rounded, and the member solved again with the length that those links make.
+Arrays of members in, arrays out: all hangings of a design are one call. A member is asked for by one fact. Facts by
+length mean what is made, pin to pin, before stretch and at the shop's temperature; all others mean the member as it
+hangs, stretched and at the site's temperature. With a chain the count of links is rounded, and the member solved again
+with the length that those links make.
 """
 
 from __future__ import annotations
@@ -12,13 +14,21 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from geom.hang import catenary, links
-from geom.hang.catenary import Hang
+from geom.hang import elastic, elastic_facts, links
+from geom.hang.formulas import chord
+from geom.hang.stretched import Stretched
 
 Floats = NDArray[np.float64]
 Ints = NDArray[np.int64]
-FactName = Literal["length", "links", "slack", "sag", "lowest", "pull"]
-FACTS: tuple[FactName, ...] = ("length", "links", "slack", "sag", "lowest", "pull")
+Flags = NDArray[np.bool_]
+FactName = Literal[
+    "length", "links", "slack", "sag", "sag_mid", "lowest", "pull", "end_pull", "through", "slope_from", "slope_to"
+]
+FACTS: tuple[FactName, ...] = (
+    "length", "links", "slack", "sag", "sag_mid", "lowest", "pull", "end_pull", "through", "slope_from", "slope_to",
+)  # fmt: skip
+BY_LENGTH: tuple[FactName, ...] = ("length", "links", "slack")
+"""Facts of what is made, before stretch; the others are of the member as it hangs."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -27,8 +37,15 @@ class Wish:
 
     span, level_difference : m, the latter `to` minus `from`
     fact : which of FACTS `value` is
-    value : m, m/m, N or a count; of `lowest` the depth under the lower support, m
-    weight : N/m
+    value : m, m/m, N, rad or a count; of `lowest` the depth under the lower support, of `through` the elevation over
+        `from`, m
+    place : plan distance of the point of `through` from `from`, m
+    deep : whether of the two members with one `end_pull` the deep one is meant
+    weight : of a metre as cut, N/m
+    stiffness : modulus times area, N; infinite for no stretch
+    strength : pull that a member shorter than its chord may be stretched by to reach, N; 0 of chain
+    expansion : 1/K
+    growth : length at the site as hung over that at the shop's temperature
     takes : length of the fittings at both ends together, m
     pitch : m; NaN of rope and rod
     parity, rounding : as links.count reads them
@@ -38,80 +55,156 @@ class Wish:
     level_difference: Floats
     fact: NDArray[np.str_]
     value: Floats
+    place: Floats
+    deep: Flags
     weight: Floats
+    stiffness: Floats
+    strength: Floats
+    expansion: Floats
+    growth: Floats
     takes: Floats
     pitch: Floats
     parity: NDArray[np.str_]
     rounding: NDArray[np.str_]
+
+    @property
+    def chord(self) -> Floats:
+        """Straight distance between the supports, m."""
+        return chord(self.span, self.level_difference)
+
+
+@dataclass(frozen=True, eq=False)
+class Lengths:
+    """Lengths pin to pin as made, unstretched and at the shop's temperature, m, and what they are beyond the chord."""
+
+    pin: Floats
+    excess: Floats
 
 
 @dataclass(frozen=True, eq=False)
 class Made:
     """What can be made of n wishes. NaN in a curve's fields where there is none.
 
-    wished : the curve of the fact as given
-    made : the curve of whole links (of rope and rod the wished one)
+    wished, made : as hung, of the fact as given, and of whole links (of rope and rod the wished one)
+    wished_lengths, lengths : what those are as made
     count : (n,) links, 0 where the stock has none
     least : (n,) the fewest links (of the parity asked for) that reach from support to support
     """
 
-    wished: Hang
-    made: Hang
+    wished: Stretched
+    made: Stretched
+    wished_lengths: Lengths
+    lengths: Lengths
     count: Ints
     least: Ints
 
 
-def wished(wish: Wish) -> Hang:
-    """Return the curves that the facts ask for, each fact solved in one call over its members."""
-    excess = np.full(wish.span.shape, np.nan)
-    for fact in FACTS:
-        chosen = wish.fact == fact
-        if chosen.any():
-            excess[chosen] = _excess(fact, wish, chosen)
-    return catenary.from_excess(wish.span, wish.level_difference, excess)
+def hung(wish: Wish, lengths: Lengths, *, growth: Floats | None = None, closer: Floats | float = 0.0) -> Stretched:
+    """Return members of given lengths as they hang.
+
+    Parameters
+    ----------
+    wish : Wish
+        The members.
+    lengths : Lengths
+        As made; of shape (n,) or (n, k).
+    growth : ndarray, optional
+        Length over that at the shop's temperature; that of the site as hung where it is left out.
+    closer : ndarray or float
+        How much nearer their supports have come on plan, m.
+    """
+    grown = wish.growth if growth is None else growth
+    span, level = wish.span - closer, wish.level_difference
+    reach = chord(np.maximum(span, 0.0), level)
+    with np.errstate(all="ignore"):
+        come = np.where(reach > 0.0, (wish.span + span) * closer / (wish.chord + reach), wish.chord)
+    fields = [span, level, wish.weight / grown, wish.stiffness, grown, come]
+    if lengths.pin.ndim > span.ndim:
+        fields = [field[:, np.newaxis] for field in fields]
+    s, v, weight, stiffness, grow, nearer = fields
+    excess = lengths.excess + (grow - 1.0) * lengths.pin + nearer
+    return elastic.from_unstretched(s, v, lengths.pin * grow, weight, stiffness, excess=excess)
 
 
-def _excess(fact: FactName, wish: Wish, chosen: NDArray[np.bool_]) -> Floats:
-    """Length beyond the chord: the one input all facts come to, accurate however taut the member."""
-    span, level, value = wish.span[chosen], wish.level_difference[chosen], wish.value[chosen]
-    match fact:
-        case "length":
-            return catenary.from_length(span, level, value).excess
-        case "links":
-            length = value * wish.pitch[chosen] + wish.takes[chosen]
-            return catenary.from_length(span, level, length).excess
-        case "slack":
-            return (value - 1.0) * np.hypot(span, level)
-        case "sag":
-            return catenary.from_sag(span, level, value).excess
-        case "lowest":
-            return catenary.from_lowest(span, level, value).excess
-        case "pull":
-            return catenary.from_parameter(span, level, value / wish.weight[chosen]).excess
+def of_pins(wish: Wish, pin: Floats) -> Lengths:
+    """Return lengths pin to pin with what they are beyond the chord; `pin` of shape (n,) or (n, k)."""
+    reach = wish.chord if pin.ndim == 1 else wish.chord[:, np.newaxis]
+    return Lengths(pin, pin - reach)
 
 
 def made(wish: Wish) -> Made:
     """Return what can be made of each wish."""
-    first = wished(wish)
+    wished = _wished_lengths(wish)
+    as_wished = hung(wish, wished)
     chain = np.isfinite(wish.pitch)
     count = np.zeros(wish.span.shape, dtype=np.int64)
     least = np.zeros(wish.span.shape, dtype=np.int64)
-    can = chain & np.isfinite(first.length)
+    can = chain & np.isfinite(wished.pin)
     if not can.any():
-        return Made(first, first, count, least)
-    excess = np.array(first.excess)
+        return Made(as_wished, as_wished, wished, wished, count, least)
     pitch, takes, parity = wish.pitch[can], wish.takes[can], wish.parity[can]
-    reach = np.hypot(wish.span[can], wish.level_difference[can])
-    least[can] = _least(reach - takes, pitch, parity)
-    effective = first.length[can] - takes
-    wanted = links.count(effective, pitch, rounding=wish.rounding[can], parity=parity)
+    least[can] = _least(wish.chord[can] / wish.growth[can] - takes, pitch, parity)
+    wanted = links.count(wished.pin[can] - takes, pitch, rounding=wish.rounding[can], parity=parity)
     given = wish.fact[can] == "links"
     wanted = np.where(given, np.rint(wish.value[can]).astype(np.int64), wanted)
     nearest = (wish.rounding[can] == "nearest") & ~given
     count[can] = np.where(nearest, np.maximum(wanted, least[can]), wanted)
-    length = count[can] * pitch + takes
-    excess[can] = catenary.from_length(wish.span[can], wish.level_difference[can], length).excess
-    return Made(first, catenary.from_excess(wish.span, wish.level_difference, excess), count, least)
+    pin, excess = np.array(wished.pin), np.array(wished.excess)
+    pin[can] = count[can] * pitch + takes
+    excess[can] = pin[can] - wish.chord[can]
+    lengths = Lengths(pin, excess)
+    return Made(as_wished, hung(wish, lengths), wished, lengths, count, least)
+
+
+def _wished_lengths(wish: Wish) -> Lengths:
+    """Return the lengths that the facts ask for, each fact solved in one call over its members."""
+    pin, excess = np.full(wish.span.shape, np.nan), np.full(wish.span.shape, np.nan)
+    for fact in FACTS:
+        chosen = wish.fact == fact
+        if chosen.any():
+            found = _by_length(fact, wish, chosen) if fact in BY_LENGTH else _by_hang(fact, wish, chosen)
+            pin[chosen], excess[chosen] = found.pin, found.excess
+    return Lengths(pin, excess)
+
+
+def _by_length(fact: FactName, wish: Wish, chosen: Flags) -> Lengths:
+    value, reach = wish.value[chosen], wish.chord[chosen]
+    if fact == "slack":
+        return Lengths(value * reach, (value - 1.0) * reach)
+    pin = value * wish.pitch[chosen] + wish.takes[chosen] if fact == "links" else value
+    return Lengths(pin, pin - reach)
+
+
+def _by_hang(fact: FactName, wish: Wish, chosen: Flags) -> Lengths:
+    """Cool the hung member down to the shop's temperature and unload it."""
+    growth = wish.growth[chosen]
+    hang = _of_fact(fact, wish, chosen)
+    pin = hang.length / growth
+    return Lengths(pin, hang.excess - (growth - 1.0) * pin)
+
+
+def _of_fact(fact: FactName, wish: Wish, chosen: Flags) -> Stretched:
+    span, level, value = wish.span[chosen], wish.level_difference[chosen], wish.value[chosen]
+    member = span, level, value, wish.weight[chosen] / wish.growth[chosen], wish.stiffness[chosen]
+    match fact:
+        case "sag":
+            return elastic_facts.from_sag(*member)
+        case "sag_mid":
+            return elastic_facts.from_sag_mid(*member)
+        case "lowest":
+            return elastic_facts.from_lowest(*member)
+        case "end_pull":
+            return elastic_facts.from_end_pull(*member, deep=wish.deep[chosen])
+        case "through":
+            return elastic_facts.from_point(span, level, (wish.place[chosen], value), *member[3:])
+        case "slope_from" | "slope_to":
+            return elastic_facts.from_slope(*member, at_to=fact == "slope_to")
+    return elastic_facts.from_pull(*member)
+
+
+def least_end_pull(wish: Wish) -> Floats:
+    """Return the least pull that members can have on their upper support, N."""
+    return elastic_facts.least_end_pull(wish.span, wish.level_difference, wish.weight / wish.growth, wish.stiffness)
 
 
 def _least(reach: Floats, pitch: Floats, parity: NDArray[np.str_]) -> Ints:
@@ -122,24 +215,43 @@ def _least(reach: Floats, pitch: Floats, parity: NDArray[np.str_]) -> Ints:
     return least + more
 
 
-def neighbours(wish: Wish, count: Ints) -> tuple[Ints, Hang]:
+def neighbours(wish: Wish, count: Ints) -> tuple[Ints, Stretched]:
     """Return the two counts on each side of each count, (n, 4), and their curves (NaN where they cannot reach)."""
     beside = links.neighbours(count)
     length = beside * wish.pitch[:, None] + wish.takes[:, None]
-    length = np.where(beside > 0, length, np.nan)
-    return beside, catenary.from_length(wish.span[:, None], wish.level_difference[:, None], length)
+    reaches = (beside > 0) & (length * wish.growth[:, None] > wish.chord[:, None])
+    return beside, hung(wish, of_pins(wish, np.where(reaches, length, np.nan)))
 
 
-def value_of(fact: FactName, hang: Hang, wish: Wish) -> Floats:
-    """Return a fact's value of solved curves, in the terms of `Wish.value`, shape (n,)."""
+def value_of(hang: Stretched, lengths: Lengths, wish: Wish) -> Floats:
+    """Return, of solved curves, the value of the fact that each was asked for, in the terms of `Wish.value`."""
+    found = np.full(wish.span.shape, np.nan)
+    for fact in FACTS:
+        chosen = wish.fact == fact
+        if chosen.any():
+            found[chosen] = _value(fact, hang, lengths, wish)[chosen]
+    return found
+
+
+def _value(fact: FactName, hang: Stretched, lengths: Lengths, wish: Wish) -> Floats:
     match fact:
-        case "length" | "links":
-            return hang.length
         case "slack":
-            return 1.0 + hang.excess / np.hypot(wish.span, wish.level_difference)
+            return 1.0 + lengths.excess / np.where(wish.chord > 0.0, wish.chord, np.nan)
         case "sag":
             return hang.sag
+        case "sag_mid":
+            return hang.sag_mid
         case "lowest":
             return np.minimum(0.0, wish.level_difference) - hang.lowest
         case "pull":
-            return hang.parameter * wish.weight
+            return hang.horizontal
+        case "end_pull":
+            return np.maximum(hang.pulls.at_from, hang.pulls.at_to)
+        case "through":
+            place = np.where(np.isnan(wish.place), 0.5 * wish.span, wish.place)[:, None]
+            return hang.at_arc(hang.arc_at(place)).elevation[:, 0]
+        case "slope_from":
+            return hang.slope_from
+        case "slope_to":
+            return hang.slope_to
+    return lengths.pin

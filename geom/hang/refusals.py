@@ -7,16 +7,20 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 
 import numpy as np
+from numpy.typing import NDArray
 
 from geom.fields import MOST_LENGTH
 from geom.hang.asked import Asked
-from geom.hang.intent import FactName, Made, Wish
+from geom.hang.intent import BY_LENGTH, FactName, Made, Wish, least_end_pull
+from geom.hang.stretched import Stretched
 from geom.registry import Refusal, refuse
 from geom.setting.options import Setting
 
 MOST_LINKS = 1_000_000
 AT_ONE_POINT = 1e-6
 """Metres: supports no farther apart are at one point, and on plan on one plumb line; nobody sets them out finer."""
+IN_PLANE = 1e-3
+"""Metres: how far a point may be out of the plane of its member, whose points are given to the millimetre."""
 LEAST_SLACK = 1e-13
 """Length beyond the chord over the chord. Under it doubles cannot tell a taut member from one that is too short, and
 its pull, falling with the root of the slack, is over a million times its weight."""
@@ -24,7 +28,9 @@ its pull, falling with the root of the slack, is over a million times its weight
 
 _EASE: Mapping[FactName, tuple[str, str]] = {
     "length": ("a longer one", "a shorter one"), "links": ("more links", "fewer links"), "slack": ("more", "less"),
-    "sag": ("more", "less"), "lowest": ("a lower point", "a higher point"), "pull": ("less", "more"),
+    "sag": ("more", "less"), "sag_mid": ("more", "less"), "lowest": ("a lower point", "a higher point"),
+    "pull": ("less", "more"), "end_pull": ("less, or the deep branch", "less"),
+    "through": ("a lower point", "a higher point"), "slope_from": ("more", "less"), "slope_to": ("more", "less"),
 }  # fmt: skip
 """What to give of each fact where a member comes out too taut, and where it comes out too long."""
 
@@ -35,7 +41,7 @@ def refusals(members: Sequence[Asked], wish: Wish, made: Made, setting: Setting)
     Only members without a curve, or with one that no shop could make, are looked at one by one.
     """
     chord = np.hypot(wish.span, wish.level_difference)
-    taut = ~((made.made.excess > LEAST_SLACK * chord) & (made.wished.excess > LEAST_SLACK * chord))
+    taut = ~(_hangs(made.made, wish) & _hangs(made.wished, wish))
     many = made.count > MOST_LINKS
     bare = np.array([member.stock.counted for member in members]) & (made.count < 1)
     odd = np.array([member.fact == "links" and not _has_parity(int(member.value), member.parity) for member in members])
@@ -43,12 +49,28 @@ def refusals(members: Sequence[Asked], wish: Wish, made: Made, setting: Setting)
     cut = made.made.length - wish.takes + np.array([member.grips for member in members])
     nothing = ~np.isfinite(wish.pitch) & ~(cut >= setting.shop.step)
     nowhere = (chord < AT_ONE_POINT) | ~(made.wished.length <= MOST_LENGTH)
-    doubtful = taut | many | bare | odd | no_links | nothing | nowhere
+    missed = np.array([_misses(member) or (member.fact == "end_pull" and not member.branch) for member in members])
+    doubtful = taut | many | bare | odd | no_links | nothing | nowhere | missed
     found = {}
     for number in np.flatnonzero(doubtful).tolist():
-        curve = _Curve(float(chord[number]), float(made.wished.length[number]), int(made.least[number]))
+        curve = _Curve(float(chord[number]), float(made.wished.length[number]), int(made.least[number]), number, wish)
         found[number] = _reason(members[number], curve, setting)
     return found or _too_many(members, made)
+
+
+def _hangs(hang: Stretched, wish: Wish) -> NDArray[np.bool_]:
+    """Whether members have a curve: longer than the chord, or stretched to reach by no more than they may be."""
+    pull = np.maximum(hang.pulls.at_from, hang.pulls.at_to)
+    slack = hang.excess > LEAST_SLACK * hang.chord
+    curved = np.isfinite(hang.u) & (hang.u > 0.0)
+    return np.asarray((curved & (slack | (pull <= wish.strength))) | (slack & (hang.span == 0.0)))
+
+
+def _misses(member: Asked) -> bool:
+    """Whether the point it is to pass is not in the plane between its supports."""
+    along, aside = member.place
+    step = (member.end.at[k] - member.start.at[k] for k in range(2))
+    return member.fact == "through" and not (0.0 < along < math.hypot(*step) and abs(aside) <= IN_PLANE)
 
 
 def _too_many(members: Sequence[Asked], made: Made) -> dict[int, Refusal]:
@@ -72,6 +94,13 @@ class _Curve:
     chord: float
     length: float
     least: int
+    number: int
+    wish: Wish
+
+    @property
+    def least_end_pull(self) -> float:
+        """The least pull that it can have on its upper support, N."""
+        return float(least_end_pull(self.wish)[self.number])
 
     @property
     def taut(self) -> bool:
@@ -92,7 +121,7 @@ def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal
     say, fact, value, chord = setting.stated, member.fact, member.value, curve.chord
     if chord < AT_ONE_POINT:
         yield refuse("to", f"is the same point as `from`, {_point(member, setting)}; give two different supports")
-    if member.start.at[:2] == member.end.at[:2] and fact in ("sag", "pull"):
+    if member.start.at[:2] == member.end.at[:2] and fact not in (*BY_LENGTH, "lowest"):
         text = "has no meaning between supports on one plumb line, where the pull is 0"
         yield refuse(fact, f"{text}; give length, links, slack or lowest")
     if fact == "links":
@@ -107,6 +136,7 @@ def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal
     if fact == "lowest" and not value < member.lower:
         text = f"{say(value)} is not under the lower support at {say(member.lower)}"
         yield refuse("lowest", f"{text}; give less than that")
+    yield from _as_hung(member, curve, setting)
     more, less = _EASE[fact]
     if not curve.length <= MOST_LENGTH and not (fact == "pull" and value > member.stock.weight * chord):
         yield refuse(fact, f"makes the member longer than {say(MOST_LENGTH)}, over any measure; give {less}")
@@ -120,6 +150,40 @@ def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal
         yield refuse(fact, f"{text}; give {more}, or a finer `step` in [shop]")
     text = f"leaves the member so taut over {say(chord)} that its pull has no figure"
     yield refuse(fact, f"{text}; give {more}")
+
+
+def _as_hung(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal]:
+    """Reasons of facts that are of the member as it hangs."""
+    fact, value = member.fact, member.value
+    if fact == "end_pull" and not member.branch:
+        text = 'is missing; two members have one end pull: give "shallow" or "deep"'
+        yield refuse("branch", text)
+    if fact == "end_pull" and value < curve.least_end_pull:
+        least = math.ceil(curve.least_end_pull * 1e3) / 1e3
+        yield refuse(fact, f"{value:.6g} N is less than any member can pull there; give at least {least:.6g} N")
+    if fact in ("slope_from", "slope_to"):
+        start, end = (member.start.at, member.end.at) if fact == "slope_from" else (member.end.at, member.start.at)
+        straight = math.degrees(math.atan2(start[2] - end[2], math.dist(start[:2], end[:2])))
+        if math.degrees(value) <= straight:
+            text = f"{math.degrees(value):.6g} degrees is not steeper than the straight line to the other support"
+            yield refuse(fact, f"{text}; give more than {straight:.6g} degrees and less than 90")
+    if fact == "through":
+        yield from _through(member, setting)
+
+
+def _through(member: Asked, setting: Setting) -> Iterator[Refusal]:
+    along, aside = member.place
+    start, end, say = member.start.at, member.end.at, setting.stated
+    span = math.dist(start[:2], end[:2])
+    if abs(aside) > IN_PLANE:
+        text = f"is {say(abs(aside))} out of the upright plane through its supports"
+        yield refuse("through", f"{text}; give a point in it")
+    if not 0.0 < along < span:
+        yield refuse("through", "is not between its supports on plan; give a point that is")
+    chord = start[2] + (end[2] - start[2]) * along / span
+    if member.value >= chord:
+        text = f"is at {say(member.value)}, not under the straight line between its supports"
+        yield refuse("through", f"{text}; give less than {say(chord)} there")
 
 
 def _links(member: Asked, chord: float, least: int, setting: Setting) -> Refusal:

@@ -9,9 +9,9 @@ import numpy as np
 from numpy.typing import NDArray
 
 from geom.curves import Polyline, Segment
-from geom.hang.filling import Shape, dimensions, drawn
 from geom.hang.rail import even
 from geom.hang.row import Row, every, named, outlines, zones
+from geom.hang.shape import Shape, dimensions, drawn
 from geom.hang.unfolded import unfolded_shape, unfolded_solid
 from geom.result import PLAN, Z_UP, Dimension, Frame, Label, Line, Piece, View, fixed
 

@@ -6,7 +6,7 @@ from dataclasses import replace
 
 import numpy as np
 
-from geom.hang.filling import Shape
+from geom.hang.shape import Shape
 from geom.result import Z_UP, Frame, Piece
 from geom.solids import Balls, Links, Solid, Sweep
 
@@ -14,8 +14,7 @@ from geom.solids import Balls, Links, Solid, Sweep
 def unfolded_shape(part: Piece, x: float) -> Shape:
     """Return a solved hanging's shape in the plane y = 0, its `from` end at `x`, its elevations kept."""
     start, end = (pull.at for pull in part.pulls)
-    figures = part.figures
-    return Shape(start, end, figures.parameter, figures.pin_to_pin).unfolded(x)
+    return Shape(start, end, part.lines[0].curve).unfolded(x)
 
 
 def unfolded_solid(solid: Solid, frame: Frame, shape: Shape) -> Solid:

@@ -2,29 +2,30 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 from typing import Annotated, ClassVar
 
-from pydantic import Field
+from pydantic import BeforeValidator, Field
 
-from geom.fields import Count, Elevation, Feature, PositiveForce, Ratio, Size, choice
+from geom import units
+from geom.fields import Count, Elevation, Feature, Limits, PointField, PositiveForce, Ratio, Size, choice
 from geom.hang import intent
 from geom.hang.asked import Asked, Ground, wishes
 from geom.hang.filling import fill
 from geom.hang.intent import FACTS
 from geom.hang.refusals import refusals
-from geom.registry import Kind, Outcome
+from geom.registry import Kind, Outcome, refuse
 from geom.setting.fittings import Fittings
 from geom.setting.ground import Clear
 from geom.setting.options import Setting
 from geom.setting.stock import StockRef
 from geom.setting.supports import SupportRef
 
-LATER = frozenset(
-    {
-        "sag_mid", "end_pull", "branch", "through", "slope_from", "slope_to", "loads", "spread", "floor", "check_load",
-    }
-)  # fmt: skip
+LATER = frozenset({"loads", "spread", "floor", "check_load"})
+
+Slope = Annotated[float, BeforeValidator(lambda raw: _SLOPE.check(units.angle(raw), raw))]
+_SLOPE = Limits(above=-math.pi / 2, below=math.pi / 2, words="degrees under the horizontal, between -90 and 90")
 
 
 class Member(Feature):
@@ -55,8 +56,16 @@ class Hanging(Member):
     links: Count | None = Field(None, description="count of links")
     slack: Ratio | None = Field(None, description="length over the distance between the supports, like 1.12")
     sag: Size | None = Field(None, description="greatest vertical distance under the chord")
+    sag_mid: Size | None = Field(None, description="vertical distance under the chord at mid-span")
     lowest: Elevation | None = Field(None, description="elevation (z, upwards) of the lowest point; not a drop")
     pull: PositiveForce | None = Field(None, description="horizontal pull")
+    end_pull: PositiveForce | None = Field(None, description="the greater of the two end pulls")
+    branch: Annotated[str | None, choice("shallow", "deep")] = Field(
+        None, description="which of the two members with this end_pull"
+    )
+    through: PointField | None = Field(None, description="a point [x, y, z] that it passes")
+    slope_from: Slope | None = Field(None, description="degrees under the horizontal at its `from` end")
+    slope_to: Slope | None = Field(None, description="degrees under the horizontal at its `to` end")
     clear: Clear | None = Field(None, description="ground under it and the clearance wanted")
 
 
@@ -69,14 +78,19 @@ def asked(member: Hanging) -> Asked:
         end=member.to,
         stock=member.stock,
         fact=fact,
-        value=float(getattr(member, fact)),
+        value=float(member.through[2] if member.through is not None else getattr(member, fact)),
         fit_from=member.fittings.from_,
         fit_to=member.fittings.to,
         parity=member.parity,
         rounding=member.round,
         copies=member.copies,
         ground=Ground(member.clear.profile, member.clear.at_least) if member.clear else None,
+        through=member.through,
+        branch=member.branch or "",
     )
+
+
+_ASTRAY = refuse("branch", "goes with `end_pull` alone; leave it out")
 
 
 def solve(hangings: Sequence[Hanging], setting: Setting) -> list[Outcome]:
@@ -84,9 +98,11 @@ def solve(hangings: Sequence[Hanging], setting: Setting) -> list[Outcome]:
     if not hangings:
         return []
     members = [asked(hanging) for hanging in hangings]
-    wish = wishes(members)
+    wish = wishes(members, setting)
     made = intent.made(wish)
-    refused = refusals(members, wish, made, setting)
+    astray = [number for number, member in enumerate(members) if member.branch and member.fact != "end_pull"]
+    refused = dict.fromkeys(astray, _ASTRAY)
+    refused |= refusals(members, wish, made, setting)
     pieces = fill(members, wish, made, skip=refused.keys(), setting=setting)
     return [refused.get(number) or pieces[number] for number in range(len(members))]
 

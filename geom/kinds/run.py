@@ -10,9 +10,8 @@ from pydantic import BeforeValidator, Field, TypeAdapter, ValidationInfo
 
 from geom.fields import Copies, Count, Elevation, PositiveForce, Ratio, Section, Size, choice
 from geom.hang.clearance import stretch
-from geom.hang.filling import wanted_of
 from geom.hang.gathering import gathered
-from geom.hang.intent import FACTS
+from geom.hang.shopwork import wanted_of
 from geom.kinds.hanging import Hanging, Member
 from geom.registry import Layout, Outcome, Path, Refusal, refuse
 from geom.result import Piece
@@ -36,6 +35,10 @@ def _each(kind: Any) -> BeforeValidator:  # noqa: ANN401 - any annotated type
 
 
 Each = tuple[float, ...]
+
+
+FACTS = ("length", "links", "slack", "sag", "lowest", "pull")
+"""Facts of a hanging that may be given of all bays of a run; the others are of one member's own place."""
 
 
 class BayFittings(Section):

@@ -12,11 +12,11 @@ from pydantic import BeforeValidator, Field, TypeAdapter, ValidationInfo, create
 from geom.curves import Arc, Curve, Polyline
 from geom.fields import Copies, PointField, Section, Size
 from geom.hang import links
-from geom.hang.filling import wanted_of
 from geom.hang.intent import FACTS
 from geom.hang.rail import even, rail, ring
 from geom.hang.refusals import MOST_LINKS
 from geom.hang.row import Row
+from geom.hang.shopwork import wanted_of
 from geom.hang.swags import gathered
 from geom.kinds.hanging import Hanging, Member
 from geom.registry import Fault, Layout, Outcome, Path, Refusal, refuse
