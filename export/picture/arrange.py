@@ -11,7 +11,7 @@ from export.picture.values import Box, Notes, Panel, around, shifted
 _TENTH = 0.1  # of the larger of two pieces: the least distance between them, if that is more than the text's
 _BETWEEN = 2.0  # between all that is printed of two views, in heights of the notes' text
 _LAST_ROWS = 3  # so many rows, or all of them, are tried beside the notes
-_FEED = 40.0  # between sheets, in heights of the notes' text, when one is not enough
+FEED = 40.0  # between sheets, in heights of the notes' text, when one is not enough
 
 
 @dataclass(frozen=True)
@@ -170,7 +170,7 @@ def _stacked(blocks: Sequence[_Row], sheet: Sheet | None, sizes: Sizes, *, feed:
         if sheet is not None and y + row.box[1] < top - sheet.height:
             if not feed or row.box[3] - row.box[1] > sheet.height:
                 return None, sheets
-            top -= sheet.height + _FEED * sizes.note
+            top -= sheet.height + FEED * sizes.note
             sheets += 1
             y = top - row.box[3]
         moved = tuple(replace(panel, at=(panel.at[0], panel.at[1] + y)) for panel in row.panels)

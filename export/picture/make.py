@@ -1,17 +1,17 @@
 """From a result to the picture on its sheet: the largest print scale at which everything fits."""
 
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from export.picture import notes as noting
 from export.picture import plan as planning
-from export.picture.arrange import Arranged, Foot, arrange
+from export.picture.arrange import FEED, Arranged, Foot, arrange
 from export.picture.drawn import printed
 from export.picture.panels import Marks, Print, Subject, elevation, subject
 from export.picture.plan import Site
-from export.picture.scale import Scale, Sheet, scales, sheet
+from export.picture.scale import Scale, Sheet, scales, sheets
 from export.picture.sizes import PAPER
-from export.picture.values import Panel, Picture
+from export.picture.values import Box, Panel, Picture, around, shifted
 from export.picture.views import Drawing
 from export.picture.wording import Wording
 from geom.result import Result
@@ -59,17 +59,30 @@ def picture(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> P
 
     The scale is the largest at which everything fits one sheet; where some mark finds no room at that, the next one is
     looked at, and taken if it has room for all. Where no scale brings that about, as the text of many pieces takes more
-    than a sheet whatever the scale, it is the largest at which that takes hardly more sheets than any scale does.
+    than a sheet whatever the scale, it is the largest at which that takes hardly more sheets than any scale does. The
+    plan of pieces far apart, larger than the sheet at any scale that shows them, stands under it by itself; and where
+    no scale brings a view or the notes on the sheet, the next larger one is taken.
     """
     found = contents(result, drawing, extra=extra)
-    on = sheet(result.setting.drawing.sheet)
+    for on in sheets(result.setting.drawing.sheet):
+        shown = _fitted(found, on) or _plan_apart(found, on)
+        if shown is not None:
+            return shown
+    raise AssertionError("sheets grow without end")
+
+
+def _fitted(found: Contents, on: Sheet) -> Picture | None:
+    """The picture on one sheet or several; None where some view, the plan or the notes fit none at any scale."""
     candidates = list(_candidates(found))
     best: Picture | None = None
     left = 0
     for scale in candidates:
         if _unmarked(found, scale, on) is None:
             continue
-        shown = _picture(_marked(found, scale, on), scale, on)
+        marked = _marked(found, scale, on)
+        if marked is None:
+            continue
+        shown = _picture(marked, scale, on)
         if best is None or shown.dropped == 0:
             best = shown
         left += 1
@@ -78,7 +91,28 @@ def picture(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> P
     return best or _on_sheets(found, candidates, on)
 
 
-def _on_sheets(found: Contents, candidates: Sequence[Scale], on: Sheet) -> Picture:
+def _plan_apart(found: Contents, on: Sheet) -> Picture | None:
+    """The picture with its plan, too large for the sheet, under the last one."""
+    if found.site is None:
+        return None
+    says = next((one.says for one in scales(found.wording.unit) if _holds(on, found.site.box, one)), None)
+    note = f"The plan is larger than the sheet and stands under it{f': print it at {says}' if says else ''}"
+    shown = _fitted(replace(found, site=None, words=found.words.with_line(note)), on)
+    if shown is None:
+        return None
+    plan = planning.plan(found.site, Print(shown.ratio / 1000, PAPER, found.wording), marks="free")
+    left, bottom, _, _ = shown.box
+    at = (left - plan.box[0], bottom - FEED * PAPER.note - plan.box[3])
+    return replace(shown, panels=(*shown.panels, replace(plan, at=at)), box=around(shown.box, shifted(plan.box, at)))
+
+
+def _holds(on: Sheet, box: Box, scale: Scale) -> bool:
+    """Whether geometry (m) with the least of marks round it goes on a sheet at a scale."""
+    wide, high = (1000.0 / scale.ratio * (box[k + 2] - box[k]) + 2 * _TITLE_ROOM for k in (0, 1))
+    return wide <= on.width and high <= on.height
+
+
+def _on_sheets(found: Contents, candidates: Sequence[Scale], on: Sheet) -> Picture | None:
     """The picture on several sheets: scales are tried upwards from the smallest, as long as few sheets are added."""
     upwards = list(reversed(candidates)) or [next(one for one in scales(found.wording.unit) if one.ratio == 1)]
     fewest, fitting = 0, []
@@ -88,8 +122,8 @@ def _on_sheets(found: Contents, candidates: Sequence[Scale], on: Sheet) -> Pictu
         if arranged is None or arranged.sheets > _MORE_SHEETS * fewest:
             break
         fitting.append(scale)
-    chosen = fitting[-1]
-    return _picture(_marked(found, chosen, on, feed=True), chosen, on)
+    shown = (_marked(found, scale, on, feed=True) for scale in reversed(fitting))
+    return next((_picture(one, scale, on) for one, scale in zip(shown, reversed(fitting), strict=True) if one), None)
 
 
 def _candidates(found: Contents) -> Iterator[Scale]:
@@ -111,7 +145,7 @@ def _unmarked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -
     return arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed)
 
 
-def _marked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged:
+def _marked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged | None:
     """Everything in place at a scale at which it fits without marks.
 
     Where it does not fit with them, marks are held to the room that is taken anyway: a smaller scale would leave them
@@ -133,7 +167,7 @@ def _marked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> 
             sheets = arranged.sheets
         if arranged is not None:
             return arranged
-    raise AssertionError("what fits without marks fits with marks in the same room")
+    return None
 
 
 def _bare(found: Contents, print_: Print) -> list[Panel]:

@@ -2,7 +2,7 @@
 
 from collections import defaultdict
 from collections.abc import Iterator, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -27,6 +27,10 @@ class Words:
     lines: tuple[tuple[Look, str], ...]
     cautions: tuple[tuple[Look, str], ...]
     numbers: dict[str, tuple[int, ...]]  # a piece's mark -> the numbers of its cautions
+
+    def with_line(self, line: str) -> "Words":
+        """Return the same words with one more line before the cautions."""
+        return replace(self, lines=(*self.lines, (LOOKS["note"], line)))
 
 
 def words(result: Result, *, extra: Sequence[str] = ()) -> Words:

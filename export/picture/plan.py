@@ -11,7 +11,7 @@ from export.picture.labels import Wanted
 from export.picture.looks import LOOKS
 from export.picture.panels import Marks, Print, with_title
 from export.picture.sizes import Sizes
-from export.picture.values import SITE_PLAN, Floats, Group, Panel, Text, around
+from export.picture.values import SITE_PLAN, Box, Floats, Group, Panel, Text, around
 from export.picture.views import Drawing, Seen, is_plan, seen_on_plan
 from geom.result import PLAN, Piece, Result
 
@@ -26,6 +26,11 @@ class Site:
     pieces: tuple[Piece, ...]
     seen: tuple[Seen, ...]
     held: tuple[Mapping[str, Floats], ...]  # of each piece: the support's mark -> (2,) m, each cross of the plan once
+
+    @property
+    def box(self) -> Box:
+        """The upright box round all pieces, m."""
+        return around(*(one.box for one in self.seen))
 
 
 def site(result: Result, drawing: Drawing) -> Site:
@@ -42,7 +47,7 @@ def wanted(result: Result) -> bool:
 def plan(site: Site, print_: Print, *, marks: Marks = "free") -> Panel:
     """Return the plan as it is printed; marks as for an elevation."""
     per, sizes = print_.per, print_.sizes
-    core = printed(around(*(one.box for one in site.seen)), per)
+    core = printed(site.box, per)
     drawn = [Drawn() for _ in site.pieces]
     share = float(np.clip(_apart(site) / per / sizes.symbol, _SMALLEST_CROSS, 1.0))
     for mine, held in zip(drawn, site.held, strict=True):

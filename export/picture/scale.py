@@ -4,6 +4,7 @@ import math
 from collections.abc import Iterator
 from dataclasses import dataclass
 from fractions import Fraction
+from itertools import count
 
 # Trimmed sheets of ISO 216 as ISO 5457 frames them: 20 mm to the left for binding, 10 mm elsewhere. A4 stands upright.
 _TRIMMED = {"A0": (1189, 841), "A1": (841, 594), "A2": (594, 420), "A3": (420, 297), "A4": (210, 297)}
@@ -38,6 +39,15 @@ def sheet(name: str) -> Sheet:
     return Sheet(name, width - 30, height - 20)
 
 
+def sheets(name: str) -> Iterator[Sheet]:
+    """Yield a sheet and those it may grow to: the larger ones up to A0, then A0 lengthened twice, four times ..."""
+    names = list(_TRIMMED)[::-1]
+    yield from map(sheet, names[names.index(name) :])
+    width, height = _TRIMMED["A0"]
+    for power in count(1):
+        yield Sheet(f"A0 x {2**power}", width - 30, height * 2**power - 20)
+
+
 def scales(unit: str) -> Iterator[Scale]:
     """Yield the scales drawings in a unit are printed at, the largest picture first."""
     if unit in ("in", "ft"):
@@ -47,7 +57,7 @@ def scales(unit: str) -> Iterator[Scale]:
         for step in reversed(_ISO_STEPS):
             if power or step > 1:
                 yield Scale(1 / (step * 10**power), f"{step * 10**power}:1")
-    for power in range(8):
+    for power in range(10):
         for step in _ISO_STEPS:
             yield Scale(step * 10**power, f"1:{step * 10**power}")
 

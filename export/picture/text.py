@@ -7,8 +7,9 @@ measured here holds the text whichever of them a reader finds.
 """
 
 import math
-from collections.abc import Iterable
+from collections.abc import Iterable, Iterator
 from functools import lru_cache
+from itertools import chain
 
 WIDTHS = {
     character: width
@@ -48,15 +49,29 @@ def width(text: str) -> float:
 
 
 def wrapped(text: str, widest: float) -> list[str]:
-    """Return the text in lines of at most `widest` cap heights, broken at spaces; a longer word stands alone."""
+    """Return the text in lines of at most `widest` cap heights, broken at spaces; words are where they are longer."""
     lines: list[str] = []
-    for word in text.split():
+    for word in chain.from_iterable(_parted(word, widest) for word in text.split()):
         longer = f"{lines[-1]} {word}" if lines else word
         if lines and width(longer) <= widest:
             lines[-1] = longer
         else:
             lines.append(word)
     return lines
+
+
+def _parted(word: str, widest: float) -> Iterator[str]:
+    """Yield a word in parts of at most `widest` cap heights, of one character at least."""
+    if width(word) <= widest:
+        yield word
+        return
+    part = ""
+    for character in word:
+        if part and width(part + character) > widest:
+            yield part
+            part = ""
+        part += character
+    yield part
 
 
 def joined(parts: Iterable[str], widest: float, between: str = ", ") -> list[str]:
