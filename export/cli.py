@@ -6,6 +6,7 @@ Exit code: 0 done; 2 a design or the arguments are wrong; 1 anything else.
 from __future__ import annotations
 
 import ast
+import io
 import os
 import pkgutil
 import sys
@@ -64,6 +65,9 @@ class Commands(click.Group):
 
     def main(self, *args: Any, **kwargs: Any) -> NoReturn:  # noqa: ANN401 - click's own signature
         """Run a command, and leave with its exit code."""
+        for name in ("stdout", "stderr"):
+            if getattr(sys, name) is None:  # closed by who called us: what would be said is said to nobody
+                setattr(sys, name, io.StringIO())
         kwargs["standalone_mode"] = False
         sys.exit(_guarded(lambda: super(Commands, self).main(*args, **kwargs)))
 

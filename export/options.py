@@ -106,18 +106,18 @@ def _one(path: Path, within: str | None, act: Callable[[Worked], None]) -> int:
 
 
 def _check_distance(text: str | None) -> None:
-    """Make sure that `--within` is a length over nothing.
+    """Make sure that `--within` is a length that curves can be drawn within (a bare one in metres, the largest unit).
 
     Raises
     ------
     click.BadParameter
         If it is not.
     """
+    from geom.fields import FINEST
     from geom.units import length
 
     try:
-        good = text is None or length(text, "m") > 0
+        if text is not None:
+            FINEST.check(length(text, "m"), text)
     except ValueError as error:
         raise click.BadParameter(str(error), param_hint="--within") from error
-    if not good:
-        raise click.BadParameter(f"{text} is not over 0", param_hint="--within")

@@ -11,6 +11,7 @@ from export.read.designs import NotText, text_of
 from geom import units
 from geom.design.reader import Design, read
 from geom.errors import Problem
+from geom.fields import FINEST
 from geom.result import Result
 from geom.solve import solve
 
@@ -66,7 +67,10 @@ def work(path: Path, within: str | None = None) -> Worked:
     problems = list(reading.problems)
     result, distance = None, None
     if reading.design is not None:
-        distance = units.length(within, reading.design.setting.unit) if within else None
+        try:
+            distance = FINEST.check(units.length(within, reading.design.setting.unit), within) if within else None
+        except ValueError as error:  # a bare length in the design's own unit
+            problems.append(Problem(1, "", "--within", str(error)))
         solved = solve(_within(reading.design, distance))
         problems += solved.problems
         result = None if problems else solved.result

@@ -138,7 +138,7 @@ def test_a_folder_stands_for_the_designs_in_it(design: Path, tmp_path: Path) -> 
     ("name", "said"),
     [
         ("curt.toml", "there is no such file or folder; did you mean 'court.toml'?"),
-        ("nowhere/a.toml", "there is no such file or folder"),
+        ("nowhere/a.toml", "there is no such file or folder; give a design (.toml) or a folder of them"),
         ("notes.txt", "is no design; a design is a file ending in .toml"),
         ("empty", "there is no design in this folder; a design is a file ending in .toml"),
     ],
@@ -244,8 +244,8 @@ def test_within_reaches_the_polylines_of_the_figures(design: Path, tmp_path: Pat
     assert len(points["0.05 mm"]) > 3 * len(points["5 mm"])
 
 
-@pytest.mark.parametrize("within", ["0", "-1 mm", "wide", "3 kg"])
-def test_a_within_that_is_no_length_over_nothing_is_refused(design: Path, within: str) -> None:
+@pytest.mark.parametrize("within", ["0", "-1 mm", "wide", "3 kg", "", "1e-7", "0.0009 mm", "0.0009"])
+def test_a_within_that_nothing_can_be_drawn_within_is_refused(design: Path, within: str) -> None:
     made = run("check", design, f"--within={within}")
     assert (made.exit_code, made.stdout) == (2, "")
     assert len(lines(made.stderr)) == 1
@@ -396,6 +396,35 @@ def test_what_a_design_holds_cannot_reach_the_terminal_as_an_order(tmp_path: Pat
     assert "U+001B" in made.output
     assert "\x1b" not in made.output
     assert "\x07" not in made.output
+
+
+def test_an_empty_folder_or_list_of_files_is_refused_and_nothing_written(
+    design: Path, tmp_path: Path, monkeypatch: pytest.MonkeyPatch
+) -> None:
+    (tmp_path / "elsewhere").mkdir()
+    monkeypatch.chdir(tmp_path / "elsewhere")
+    for options in (("--into", ""), ("--into", "out", "--only", ""), ("--into", "out", "--only", " , ")):
+        made = run("export", design, *options)
+        assert (made.exit_code, made.stdout) == (2, "")
+        assert "; " in made.stderr
+        assert list(Path().iterdir()) == []
+
+
+@pytest.mark.skipif(sys.platform != "linux", reason="other systems' names are text")
+def test_a_name_that_is_no_text_is_reported_and_the_others_are_written(design: Path, tmp_path: Path) -> None:
+    odd = os.fsencode(design.parent) + b"/bad\xff.toml"
+    Path(os.fsdecode(odd)).write_bytes(design.read_bytes())
+    made = program("export", design.parent, "--into", tmp_path / "out", "--only", "cuts")
+    assert made.returncode == 2
+    assert "bad?.toml: its name is not UTF-8 text" in made.stderr
+    assert (tmp_path / "out" / "court" / "court-cuts.csv").exists()
+
+
+@pytest.mark.skipif(sys.platform == "win32", reason="a shell's closing of streams")
+def test_a_run_whose_streams_are_closed_does_its_work(design: Path, tmp_path: Path) -> None:
+    line = f'"{sys.executable}" -m export export "{design}" --into "{tmp_path}/out" --only cuts >&- 2>&-'
+    assert subprocess.run(line, shell=True, cwd=ROOT, timeout=60, check=False).returncode == 0
+    assert (tmp_path / "out" / "court" / "court-cuts.csv").exists()
 
 
 def test_help_lists_every_command_and_loads_none_of_the_heavy_libraries() -> None:

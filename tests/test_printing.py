@@ -95,6 +95,15 @@ def test_links_that_thickening_would_close_become_a_rod() -> None:
     assert read(print_).body_count == 1
 
 
+def test_a_solid_that_would_be_cut_into_thousands_of_parts_is_left_whole() -> None:
+    print_ = printed(Sweep(CURVE, 0.01), Wishes(bed=(1e-3, 1e-3, 1e-3)))
+    assert [part.name for part in print_.parts] == [""]
+    assert print_.notes == ("it is left whole, as it would take over 2000 parts to fit the bed",)
+    together = printed(CHAIN, Wishes(bed=(1e-3, 1e-3, 1e-3), joined=True))
+    assert len(together.parts) == 1
+    assert read(together).is_watertight
+
+
 def test_what_is_thick_enough_is_left_alone() -> None:
     for body in (CHAIN, ring_arch(), frame(), Sweep(CURVE, 0.01, 0.006)):
         done = thickened(body, 2e-3)

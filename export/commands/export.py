@@ -26,7 +26,12 @@ _FIGURES = "figures"  # always written, by save itself
 @click.command("export", help=__doc__)
 @shared
 @click.option(
-    "--into", required=True, type=click.Path(path_type=Path, file_okay=False), metavar="DIR", help="Where to write."
+    "--into",
+    required=True,
+    type=click.Path(file_okay=False),
+    callback=lambda _ctx, _param, text: _folder(text),
+    metavar="DIR",
+    help="Where to write.",
 )
 @click.option(
     "--only",
@@ -69,13 +74,26 @@ def export(  # noqa: D103, PLR0913, PLR0917 - click hands over each option as a 
     return round_of(designs, act, within=within, quiet=quiet, unique=True)
 
 
+def _folder(text: str) -> Path:
+    """Return the folder to write into.
+
+    Raises
+    ------
+    click.BadParameter
+        If the text is empty, as a variable that was never set leaves it: that is not the folder one stands in.
+    """
+    if not text.strip():
+        raise click.BadParameter("it is empty; give a folder, or . for this one")
+    return Path(text)
+
+
 def _asked_for(only: tuple[str, ...]) -> tuple[list[Output], bool]:
     """Return the outputs to be made, and whether others are left out.
 
     Raises
     ------
     click.BadParameter
-        If a word names no output.
+        If a word names no output, or there is none.
     """
     from export.outputs import outputs
     from geom.errors import near
@@ -87,6 +105,8 @@ def _asked_for(only: tuple[str, ...]) -> tuple[list[Output], bool]:
             names = sorted((*known, _FIGURES))
             hint = near(word, names) or f"; known are {', '.join(names)}"
             raise click.BadParameter(f"{word!r} is no file of ours{hint}", param_hint="--only")
+    if only and not words:
+        raise click.BadParameter("it names no file; leave it out for all of them", param_hint="--only")
     made = [output for name, output in known.items() if not only or name in words]
     return made, len(made) < len(known)
 

@@ -26,6 +26,7 @@ _LONG = 1.5  # depth of a socket in diameters of its peg
 _SEGMENTS = 32
 _BROKEN = 0.01  # share of a socket's surroundings that may be missing: the facets of a round body
 _FIT = 1e-6  # of the bed: larger by less is rounding
+MOST_PARTS = 2000  # that a solid is cut into: more were glued together by nobody, and would take hours to be cut
 
 
 class Peg(NamedTuple):
@@ -70,14 +71,20 @@ def cut_to_bed(solid: Manifold, bed: Array) -> CutUp:
     size = high - low
     if fits(size, bed):
         return CutUp([solid], [], 0)
-    ways = [np.ceil(size / (np.array(turned) * (1 + _FIT))).astype(int) for turned in permutations(bed.tolist())]
-    counts = min(ways, key=lambda way: (int(np.prod(way)), tuple(way)))
+    counts = counts_of(size, bed)
     planes = [low[axis] + size[axis] * np.arange(1, counts[axis]) / counts[axis] for axis in range(3)]
     pegs, plain = _all_pegs(solid, planes, size / counts)
     if pegs:
         sockets = Manifold.batch_boolean([cylinder(peg, _PLAY) for peg in pegs], OpType.Add)
         solid = checked(solid - sockets, "cutting sockets")
     return CutUp(_parts(solid, planes), pegs, plain)
+
+
+def counts_of(size: Array, bed: Array) -> Array:
+    """Return into how many parts along each axis (3,) a box is cut for a bed: the fewest, all laid the same way."""
+    ways = [np.ceil(size / (np.array(turned) * (1 + _FIT))) for turned in permutations(bed.tolist())]
+    fewest = min(ways, key=lambda way: (float(np.prod(way)), tuple(way)))
+    return np.maximum(fewest, 1.0).astype(np.int64)
 
 
 def cylinder(peg: Peg, play: float = 0.0) -> Manifold:

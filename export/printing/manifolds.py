@@ -10,6 +10,7 @@ import numpy as np
 from manifold3d import Error, Manifold, OpType
 from manifold3d import Mesh as ModellerMesh
 
+from export.outputs import CheckFailed
 from geom.solids import Balls, Body, Faceted, Links, Mesh, Union
 
 MM = 1000.0  # the modeller's unit, in metres
@@ -19,7 +20,7 @@ _SHORTEST = 1e-3  # mm
 _SINGLE = 2.0**-21  # of the size: four roundings of float32
 
 
-class ModellerError(RuntimeError):
+class ModellerError(CheckFailed):
     """The modeller made nothing usable; the text says of what."""
 
 
@@ -66,7 +67,8 @@ def checked(solid: Manifold, doing: str) -> Manifold:
         If it is empty or broken.
     """
     if solid.status() != Error.NoError or solid.is_empty():
-        raise ModellerError(f"{doing} failed: {solid.status().name}")
+        text = f"{doing} for the print failed ({solid.status().name}); leave `bed` and joined `links` out of [print]"
+        raise ModellerError(text)
     return solid
 
 

@@ -5,7 +5,7 @@ from dataclasses import dataclass, replace
 
 import numpy as np
 
-from export.printing.bed import CutUp, cut_to_bed, fits, laid_out
+from export.printing.bed import MOST_PARTS, CutUp, counts_of, cut_to_bed, fits, laid_out
 from export.printing.manifolds import MM, faceted, joined
 from export.printing.thicken import thickened
 from geom.solids import Bars, Body, Links, Solid, Union
@@ -102,8 +102,13 @@ def _modelled(body: Body, wishes: Wishes, fine: float, *, join: bool) -> tuple[l
     low, high = body.extents(fine)
     if not join and bed is not None and fits((high - low) * MM, bed):
         return [("", body)], ()
-    whole = joined(body, fine)
     notes = []
+    if bed is not None and float(np.prod(counts_of((high - low) * MM, bed), dtype=np.float64)) > MOST_PARTS:
+        notes.append(f"it is left whole, as it would take over {MOST_PARTS} parts to fit the bed")
+        bed = None
+        if not join:
+            return [("", body)], tuple(notes)
+    whole = joined(body, fine)
     if join and (pieces := len(whole.decompose())) > 1:
         notes.append(f"the joined print is in {pieces} pieces that do not touch")
     cut = CutUp([whole], [], 0) if bed is None else cut_to_bed(whole, bed)

@@ -36,9 +36,12 @@ def find(arguments: Sequence[Path]) -> Found:
         meant = _meant(argument)
         if isinstance(meant, str):
             problems.append(meant)
-        else:
-            for path in meant:
+            continue
+        for path in meant:
+            if _is_text(path.name):
                 paths.setdefault(os.path.abspath(path), path)
+            else:
+                problems.append(f"{path}: its name is not UTF-8 text, which names of results are made of; rename it")
     return Found(tuple(paths.values()), tuple(problems))
 
 
@@ -47,10 +50,20 @@ def _meant(argument: Path) -> list[Path] | str:
         inside = sorted(p for p in argument.iterdir() if _is_design(p) and p.is_file())
         return inside or f"{argument}: there is no design in this folder; a design is a file ending in {_ENDING}"
     if not argument.exists():
-        return f"{argument}: there is no such file or folder{near(argument.name, _designs_beside(argument))}"
+        hint = near(argument.name, _designs_beside(argument)) or f"; give a design ({_ENDING}) or a folder of them"
+        return f"{argument}: there is no such file or folder{hint}"
     if argument.suffix.casefold() != _ENDING:
         return f"{argument}: is no design; a design is a file ending in {_ENDING}"
     return [argument]
+
+
+def _is_text(name: str) -> bool:
+    """Whether a file's name can be written in UTF-8: bytes that are not are read as lone surrogates."""
+    try:
+        name.encode()
+    except UnicodeEncodeError:
+        return False
+    return True
 
 
 def _is_design(path: Path) -> bool:
