@@ -145,10 +145,10 @@ def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal
     if member.takes - member.grips >= chord:
         text = f"take {say(member.takes)}, which leaves no {member.stock.kind} to cut"
         yield refuse("fittings", f"{text} over {say(chord)}; give shorter fittings or a longer member")
-    if curve.length - member.takes + member.grips < setting.shop.step:
+    if chord < curve.length < setting.shop.step + member.takes - member.grips:
         text = f"leaves less to cut than the step of {say(setting.shop.step)} that lengths are rounded to"
         yield refuse(fact, f"{text}; give {more}, or a finer `step` in [shop]")
-    text = f"leaves the member so taut over {say(chord)} that its pull has no figure"
+    text = f"leaves the member too taut over {say(chord)} to be made"
     yield refuse(fact, f"{text}; give {more}")
 
 
