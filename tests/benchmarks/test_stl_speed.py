@@ -7,7 +7,7 @@ from pathlib import Path
 import pytest
 
 RUN = """
-import resource, sys, time
+import re, sys, time
 from pathlib import Path
 import numpy as np
 from export.stl import solid_stl
@@ -22,7 +22,8 @@ with (folder / "ours.stl").open("wb") as file:
     for piece in solid_stl(Solid("S1", body.volume, body), 5e-4):
         file.write(piece)
 ours = time.perf_counter() - start
-memory = resource.getrusage(resource.RUSAGE_SELF).ru_maxrss / 1024
+# the peak of this process alone: ru_maxrss also counts what the process that started it held
+memory = int(re.search(r"VmHWM:\\s+(\\d+)", Path("/proc/self/status").read_text()).group(1)) / 1024
 data = np.fromfile(folder / "ours.stl", np.uint8)
 start = time.perf_counter()
 data.tofile(folder / "same.stl")
@@ -31,6 +32,7 @@ print(ours, time.perf_counter() - start, memory, len(data))
 
 
 @pytest.mark.long
+@pytest.mark.skipif(sys.platform != "linux", reason="the peak of memory is read from Linux's own account")
 def test_ten_thousand_links_are_written_as_a_stream(tmp_path: Path) -> None:
     ratios = []
     for _ in range(3):
