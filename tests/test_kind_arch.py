@@ -323,6 +323,15 @@ def test_blocks_with_closed_joints_are_printed_apart(before: str, gap: float) ->
     assert float(LEAST_GAP) == 5e-5
 
 
+def test_a_print_whose_blocks_are_no_larger_than_the_gap_is_made_all_the_same() -> None:
+    # At 1:5000 the gap is 250 mm of the arch and a block 85 mm of its axis.
+    piece = made("[print]\nscale = 5000", blocks="101")
+    (_, blocks) = piece.solids
+    assert isinstance(blocks.body, Union)
+    assert len(blocks.body.bodies) == 101
+    assert blocks.volume == pytest.approx(piece.solids[0].volume, rel=1e-9)
+
+
 def test_supports_bear_what_the_arch_pushes() -> None:
     before = "[support.west]\nat = [0, 0, 0]\nheight = 800\n[support.east]\nat = [4000, 0, 0]"
     result = solved(design(before, **{"from": '"west"', "to": '"east"', "copies": "4"}))

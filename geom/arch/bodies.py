@@ -8,6 +8,7 @@ from numpy.typing import NDArray
 from geom.arch.asked import AskedArch
 from geom.arch.blocks import Voussoirs, voussoirs
 from geom.arch.making import Made
+from geom.arch.refusal import NoArch
 from geom.arch.views import block_mark
 from geom.result import Flat, fixed
 from geom.setting.options import Setting
@@ -33,11 +34,14 @@ def solids(asked: AskedArch, made: Made, setting: Setting) -> tuple[Solid, ...]:
 
 
 def apart(asked: AskedArch, made: Made, gap: float) -> Voussoirs:
-    """Return the blocks with at least `gap` (m) between them."""
+    """Return the blocks with at least `gap` (m) between them; as they are where that would leave nothing of one."""
     assert made.stones is not None, "blocks were asked for"
     if asked.wanted.joint >= gap:
         return made.stones
-    return voussoirs(made.ring, len(made.stones), joint=gap)
+    try:
+        return voussoirs(made.ring, len(made.stones), joint=gap)
+    except NoArch:  # a print so small that its blocks are no larger than the gap
+        return made.stones
 
 
 def flats(asked: AskedArch, made: Made, setting: Setting) -> tuple[Flat, ...]:

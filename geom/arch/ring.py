@@ -254,5 +254,5 @@ def _check_level_foot(fitted: Fit, profile: Profile) -> None:
         raise NoArch(
             '"level" would cut the ring away, since its intrados stays {} under a springing; '
             'give foot = "radial", more rise, or face = "intrados"',
-            -clear, key="foot",
+            abs(round(clear, 9)), key="foot",
         )  # fmt: skip
