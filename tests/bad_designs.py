@@ -154,7 +154,6 @@ BAD_HANGINGS = [
     Bad("ground of one point", HANGING, "[[0, 0], [4000, -120]]", "[[0, 0]]", "clear.above", "at least two"),
     Bad("clearance under nought", HANGING, "at_least = 1500", "at_least = -1", "clear.at_least", "0 or more"),
     Bad("key unknown", HANGING, "copies = 2", "copys = 2", "copys", "did you mean 'copies'"),
-    Bad("key of a later version", HANGING, "copies = 2", "copies = 2\ncheck_load = \"100 kg\"", "check_load", "not solved by this version"),
     Bad("support's point absent", HANGING, "at     = [0, 0, 3000]\n", "", "at", "is missing", "[support.A]"),
     Bad("support's height of nought", HANGING, "height = 3000", "height = 0", "height", "more than 0"),
     Bad("support's key unknown", HANGING, "height = 3000", "hight = 3000", "hight", "did you mean 'height'"),

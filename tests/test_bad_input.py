@@ -12,8 +12,9 @@ from geom.design.reader import read
 from geom.errors import Problem
 from geom.solve import solve
 from tests.bad_designs import BAD_HANGINGS, BAD_RUNS, HANGING, RUN, Bad
+from tests.bad_shapes import ARCH, BAD_ARCHES, BAD_NETS, NET
 
-ALL = [*BAD_HANGINGS, *BAD_RUNS]
+ALL = [*BAD_HANGINGS, *BAD_RUNS, *BAD_ARCHES, *BAD_NETS]
 
 
 def problems_of(text: str) -> tuple[Problem, ...]:
@@ -22,7 +23,7 @@ def problems_of(text: str) -> tuple[Problem, ...]:
     return reading.problems + solved
 
 
-@pytest.mark.parametrize("base", [HANGING, RUN])
+@pytest.mark.parametrize("base", [HANGING, RUN, ARCH, NET])
 def test_the_designs_that_are_made_wrong_are_right_before(base: str) -> None:
     assert problems_of(base) == ()
 
