@@ -347,9 +347,9 @@ REFUSED: list[tuple[dict[str, str], list[str]]] = [
     ({"spacing": "3"},
      ["spacing: 2000 by 1333 meshes come to 5,335,333 members; give a coarser net of 1,000,000 at most"]),
     ({"outline": "[[0, 0, 0], [6000, 4000, 0], [6000, 0, 0], [0, 4000, 0]]"},
-     ["outline: two sides cross each other on plan; give the corners in order round the net"]),
+     ["outline: has two sides that cross on plan; give the corners in order round the net"]),
     ({"outline": "[[0, 0, 0], [1, 0, 0], [1, 1, 0]]"},
-     ["outline: a square net needs an outline of four corners [x, y, z], not 3"]),
+     ["outline: has 3 corners; give the four of a square net, [x, y, z] each, in order"]),
     ({"anchors": '"corner"'},
      ["anchors: \"corner\" holds nothing; did you mean 'corners'?; give \"corners\", \"edges\" or a list "
       "of supports' names or points"]),

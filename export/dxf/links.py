@@ -34,6 +34,7 @@ class LinkBlocks:
             pen.block(names[face], place, _LINK.layer, angle)
 
     def _name(self, row: Links, *, face_on: bool) -> str:
+        face_on = face_on and bool(row.wire)  # balls are the same from all sides
         key = (row.wire, row.pitch, row.width, face_on)
         if key not in self._names:
             number = len({known[:3] for known in self._names} | {key[:3]})

@@ -33,6 +33,7 @@ LATER = frozenset(
 LATER_PATTERNS = ("diagonal", "triangle", "hexagon", "ring")
 WHOLE = ("corners", "edges")
 NONE = "none"
+_APART = 1e-7  # of the net: nodes nearer than that are drawn together, and the member between them has no length
 MOST_LINKS = 1_000_000  # of all copies together: a design of more is refused
 DEEPEST = 20.0
 """Depth over the outline's longest side, past which force densities are too small for the weights to mean anything: a
@@ -127,7 +128,8 @@ def _solve(net: Net, setting: Setting) -> Outcome:
         return refuse(error.key, str(error))
     except SolveError as error:
         return refuse("force_density", f"{error}; give more")
-    return _too_deep(net, shape, setting) or _too_many(asked, shape) or _piece(net, asked, shape, setting)
+    refused = _drawn_together(asked, shape) or _too_deep(net, shape, setting) or _too_many(asked, shape)
+    return refused or _piece(net, asked, shape, setting)
 
 
 def _piece(net: Net, asked: AskedNet, shape: NetShape, setting: Setting) -> Outcome:
@@ -218,6 +220,16 @@ def _adrift(asked: AskedNet) -> Refusal | None:
         return None
     text = f"hold no part of the net that node {asked.node_mark(int(loose[0]))} belongs to"
     return refuse("anchors", f"{text}; add an anchor there, or give members along the edges")
+
+
+def _drawn_together(asked: AskedNet, shape: NetShape) -> Refusal | None:
+    """Force densities draw a net together over its anchors: over one to a point, over those on a line to that line."""
+    together = np.flatnonzero(shape.chord <= _APART * float(np.ptp(asked.pattern.nodes, axis=0).max()))
+    if not len(together):
+        return None
+    one, other = (asked.node_mark(int(node)) for node in asked.network.members[together[0]])
+    text = f"let nodes {one} and {other} be drawn together; give at least three, not in one line on plan"
+    return refuse("anchors", text)
 
 
 def _too_deep(net: Net, shape: NetShape, setting: Setting) -> Refusal | None:

@@ -110,24 +110,24 @@ def square(
 def _check_outline(corners: Floats) -> None:
     if corners.shape != (4, 3):
         count = len(corners) if corners.ndim else 0
-        raise PatternError("outline", f"a square net needs an outline of four corners [x, y, z], not {count}")
+        raise PatternError("outline", f"has {count} corners; give the four of a square net, [x, y, z] each, in order")
     plan = corners[:, :2] - corners[:, :2].mean(axis=0)
     sides = np.roll(plan, -1, axis=0) - plan
     longest = float(np.linalg.norm(sides, axis=1).max())
     for k in np.flatnonzero(np.linalg.norm(sides, axis=1) <= _FLAT * longest):
-        raise PatternError("outline", f"corners {k + 1} and {(k + 1) % 4 + 1} stand at one place on plan; move one")
+        raise PatternError("outline", f"has corners {k + 1} and {(k + 1) % 4 + 1} at one place on plan; move one")
     if _crosses(plan, 0) or _crosses(plan, 1):
-        raise PatternError("outline", "two sides cross each other on plan; give the corners in order round the net")
+        raise PatternError("outline", "has two sides that cross on plan; give the corners in order round the net")
     area = 0.5 * sum(_cross(plan[k], plan[(k + 1) % 4]) for k in range(4))  # positive anticlockwise
     if abs(area) <= _FLAT * longest**2:
-        raise PatternError("outline", "the four corners lie on one line on plan and enclose no area")
+        raise PatternError("outline", "lies on one line on plan and encloses no area; give four corners round one")
     turns = np.array([_cross(sides[k - 1], sides[k]) for k in range(4)])
     inward = np.flatnonzero(turns * np.sign(area) < -_FLAT * longest**2)
     if len(inward):
         raise PatternError(
             "outline",
-            f"corner {inward[0] + 1} points inward on plan, so meshes there would lie over one another; "
-            "a square net needs four corners that point outward",
+            f"has corner {inward[0] + 1} pointing inward on plan, where meshes would lie over one another; "
+            "give four corners that point outward",
         )
 
 
