@@ -97,23 +97,21 @@ def _arc(a: Floats, phi0: Floats, d: Floats) -> Floats:
 
 
 def _turn_at(x: Floats, span: Floats, length: Floats, soft: Floats, u: Floats, y0: Floats) -> Floats:
-    """Give d = phi - phi0 at a plan distance.
-
-    With beta = H/EA it is d + beta (sinh phi - sinh phi0) = x/a: Kepler's equation on the hyperbola, in short.
-    """
+    """Give phi - phi0 at a plan distance."""
     a = parameter(span, length, soft, u)
     start = 2.0 * u * x / span
     d = start.copy()
-    repair(
-        (soft > 0.0) & (u < _DEEP) & (x > 0.0),
-        d,
-        lambda d, *args: newton(_kepler, d, *args, bracket=(0.0, np.inf)),
-        start,
-        np.arcsinh(y0 / a),
-        a * soft,
-        x / a,
-    )
+    repair((soft > 0.0) & (u < _DEEP) & (x > 0.0), d, turn, start, np.arcsinh(y0 / a), a * soft, x / a)
     return d
+
+
+def turn(start: Floats, phi0: Floats, beta: Floats, target: Floats) -> Floats:
+    """Give the d = phi - phi0 of d + beta (sinh phi - sinh phi0) = x/a = target, beta = H/EA.
+
+    That is Kepler's equation on the hyperbola, in short. The first guess has the target's sign.
+    """
+    sign = np.sign(target)
+    return sign * newton(_kepler, np.abs(start), sign * phi0, beta, np.abs(target), bracket=(0.0, np.inf))
 
 
 def _kepler(d: Floats, phi0: Floats, beta: Floats, target: Floats) -> tuple[Floats, Floats]:

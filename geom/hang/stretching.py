@@ -166,8 +166,7 @@ def _halley_step(u: Floats, square: Floats, level: Floats, surplus: Floats, half
     bend = r * g1
     twist = bend * inverse
     whole = 1.0 / (more + bend)  # 1/(1 + A)
-    t = level * whole
-    t *= whole
+    t = level * whole * whole
     twist *= t
     value = more + 1.0
     value += bend
@@ -175,9 +174,7 @@ def _halley_step(u: Floats, square: Floats, level: Floats, surplus: Floats, half
     value *= bend
     value *= t  # t (A (2 + A) - r (2 + r))
     value += surplus
-    bend = more + 1.0
-    bend *= r
-    value += bend
+    value += (more + 1.0) * r
     bent *= square
     value -= bent
     # twice r (1 + r) (1 - t + t (1 + r) (u/sinh u)^2/(1 + A))
