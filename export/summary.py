@@ -14,6 +14,11 @@ from export.walk import entries
 from geom.result import Case, Caution, Piece, Quantity, Result, StockPlan, Support, Unit
 
 _MOST_ROWS = 12  # of a table within a piece, and of parts shown in full: about half a screen
+_WORST = {"bays": ", in the worst bay", "strands": ", of the worst strand"}  # of the parts of a piece
+_SAID = {  # figures whose key alone could be mistaken
+    "greatest thickness": "thickness at which the inner parallel folds",
+    "eccentricity": "line of thrust off the axis over the thickness",
+}
 _MOST_LINES = 100  # of parts shown in one line each
 
 
@@ -57,7 +62,8 @@ def _asked(piece: Piece, unit: str) -> Iterator[tuple[str, str]]:
         name = piece.intended.name.replace("_", " ")
         yield f"asked for: {name}", shown(piece.intended.value, piece.intended.unit, unit)
         if piece.difference is not None:
-            yield "made minus asked for", shown(piece.difference.value, piece.difference.unit, unit)
+            where = _WORST.get(piece.parts_name, "")
+            yield f"made minus asked for{where}", shown(piece.difference.value, piece.difference.unit, unit)
     yield "mass", shown(piece.mass, Unit("kg"), unit)
 
 
@@ -67,11 +73,11 @@ def _singles(figures: object, unit: str, prefix: str = "") -> Iterator[tuple[str
         if is_dataclass(value) and not isinstance(value, Quantity):
             yield from _singles(value, unit, f"{prefix}{name}: ")
         elif isinstance(value, Quantity):
-            yield f"{prefix}{name}", shown(value.value, value.unit, unit)
+            yield f"{prefix}{_SAID.get(name, name)}", shown(value.value, value.unit, unit)
         elif isinstance(value, str | int | float):
             text = shown(value, of, unit)
             if text != "-":
-                yield f"{prefix}{name}", text
+                yield f"{prefix}{_SAID.get(name, name)}", text
 
 
 def _tables(figures: object, unit: str, prefix: str = "") -> Iterator[str]:

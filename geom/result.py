@@ -135,24 +135,41 @@ class Dimension:
     says: str = ""
     side: Literal["below", "above", "left", "right", "inside"] = "below"
     rank: int = 0  # 0 stands nearest the figure; larger ranks further out
+    tells: bool = False  # whether it is one of the few that tell the shape as it was asked for
 
     def __post_init__(self) -> None:
         object.__setattr__(self, "p", fixed(self.p, 3))
         object.__setattr__(self, "q", fixed(self.q, 3))
 
 
-LabelRole = Literal["support", "held point", "load", "node", "member", "joint", "part"]
+LabelRole = Literal[
+    "support", "held point", "load", "node", "member", "joint", "part", "fitting", "bay", "block", "station",
+]  # fmt: skip
+
+
+@dataclass(frozen=True)
+class Said:
+    """A line of text with lengths in it: each `{}` of `text` is one of `lengths` (m), said in the drawing's unit."""
+
+    text: str
+    lengths: tuple[Metres, ...] = ()
 
 
 @dataclass(frozen=True, eq=False)
 class Label:
-    """A mark at a place (3,) m. The role decides its symbol: supports carry theirs, nodes a circle, loads a bob."""
+    """A mark at a place (3,) m. The role decides its symbol: supports carry theirs, nodes a circle, loads a bob.
+
+    `below` are lines that stand under it in small text. A "bay" stands in the row under the figure, a "block" within
+    its outline or, all of them alike, outside the ring, in the direction of `along`; a "station" is a length under its
+    point on a line of ordinates.
+    """
 
     at: Floats
     text: str
     role: LabelRole
     reach: float = 0.0  # of a load's hanger, m
-    along: Floats | None = None  # direction (3,) of the member it stands beside
+    along: Floats | None = None  # direction (3,) of the member it stands beside; of a block, from `at` to its back
+    below: tuple[Said, ...] = ()
 
     def __post_init__(self) -> None:
         object.__setattr__(self, "at", fixed(self.at, 3))

@@ -9,7 +9,7 @@ from typing import Any
 import numpy as np
 import pytest
 from shapely import unary_union
-from shapely.geometry import Polygon
+from shapely.geometry import LineString, Point, Polygon
 
 from export import figures as written
 from geom.arch.bodies import LEAST_GAP
@@ -258,10 +258,15 @@ def test_dimensions_are_the_figures() -> None:
     assert said["clear span"].value == pytest.approx(4.0, rel=1e-12)
     assert said["span of axis"].value == pytest.approx(found["span_m"], rel=1e-11)
     assert said["clear rise"].value == pytest.approx(3.0, rel=1e-12)
-    assert said["rise of axis"].value == pytest.approx(found["rise_m"], rel=1e-11)
+    assert said["over all"].value == pytest.approx(3.0 + 0.3, rel=1e-12)  # at the crown the normal is upright
+    bed = found["extrados_m"][-1][0] - found["intrados_m"][-1][0]
+    assert said["bed"].value == pytest.approx(bed, rel=1e-9)
+    assert said["steps from the first springing"].value == 1.0
+    asked = [dimension.says for dimension in piece.views[0].dimensions if dimension.tells]
+    assert asked == ["clear span", "clear rise"]
     assert said["level difference"].value == pytest.approx(0.3, rel=1e-12)
     thick = [d for d in piece.views[0].dimensions if d.kind == "aligned"]
-    assert [d.value for d in thick] == pytest.approx([0.3, 0.3], rel=1e-12)
+    assert [d.value for d in thick] == pytest.approx([0.3], rel=1e-12)  # one: it is the same all along
     table = {row["x_m"]: row["intrados_m"] for row in found["setting_out"]}
     ordinates = [d for d in piece.views[0].dimensions if d.kind == "vertical" and not d.says]
     assert [d.value for d in ordinates] == pytest.approx([table[x] for x in (1.0, 2.0, 3.0, 4.0)], rel=1e-11)
@@ -349,8 +354,34 @@ def test_supports_bear_what_the_arch_pushes() -> None:
 def test_the_marks_of_springings_and_blocks_are_labelled() -> None:
     labels = made(blocks="3").labels
     assert [(label.text, label.role) for label in labels] == [
-        ("A1.from", "support"), ("A1.to", "support"), ("A1.1", "part"), ("A1.2", "part"), ("A1.3", "part"),
+        ("A1.from", "support"), ("A1.to", "support"), ("A1.1", "block"), ("A1.2", "block"), ("A1.3", "block"),
     ]  # fmt: skip
+
+
+def test_a_block_is_marked_in_its_outer_half_with_the_way_to_its_back() -> None:
+    piece = made(blocks="15")
+    outer = LineString(np.array(figures_of(piece)["extrados_m"])[:, [0, 2]])
+    for label in piece.labels[2:]:
+        assert label.along is not None
+        assert outer.distance(Point((label.at + label.along)[[0, 2]])) < 1e-3  # the polyline's own tolerance
+        assert 0 < np.linalg.norm(label.along) < 0.3 / 2
+
+
+def test_ordinates_have_their_distance_from_the_springing_under_them() -> None:
+    piece = made(setting_out="{ step = 1000 }")
+    stations = [label for label in piece.labels if label.role == "station"]
+    assert [label.below[0].lengths[0] for label in stations] == pytest.approx([1.0, 2.0, 3.0], abs=1e-12)
+    assert all(label.at[0] == pytest.approx(label.below[0].lengths[0], abs=1e-12) for label in stations)
+
+
+def test_sizes_over_all_beds_and_depth_are_facts() -> None:
+    piece = made(face='"intrados"')
+    found = {fact.name: fact.value for fact in piece.facts}
+    extrados = np.array(figures_of(piece)["extrados_m"])
+    assert found["width over all"] == pytest.approx(np.ptp(extrados[:, 0]), rel=1e-6)
+    assert found["height over all"] == pytest.approx(np.ptp(extrados[:, 2]), rel=1e-3)  # a polyline of another fineness
+    assert found["thickness"] == 0.3
+    assert found["foot bed"] == pytest.approx((extrados[-1, 0] - extrados[0, 0] - 4.0) / 2, rel=1e-9)
 
 
 # What is refused

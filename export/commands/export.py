@@ -69,7 +69,7 @@ def export(  # noqa: D103, PLR0913, PLR0917 - click hands over each option as a 
             choices=choices,
             verify=verify,
         )
-        _say(replace(worked, result=result), save(order, into), quiet=quiet)
+        _say(replace(worked, result=result), save(order, into), quiet=quiet, verified=verify)
 
     return round_of(designs, act, within=within, quiet=quiet, unique=True)
 
@@ -111,7 +111,7 @@ def _asked_for(only: tuple[str, ...]) -> tuple[list[Output], bool]:
     return made, len(made) < len(known)
 
 
-def _say(worked: Worked, saved: Saved, *, quiet: bool) -> None:
+def _say(worked: Worked, saved: Saved, *, quiet: bool, verified: bool) -> None:
     from export.summary import cautions
 
     if saved.disagreement:
@@ -125,6 +125,9 @@ def _say(worked: Worked, saved: Saved, *, quiet: bool) -> None:
     for word, names in (("", saved.written), ("left as it was: ", saved.kept), ("removed: ", saved.removed)):
         for name in names:
             tell(f"  {word}{name}")
+    if verified:
+        count = len(saved.written)
+        tell(f"  verified: {count} {'file' if count == 1 else 'files'} read back in full")
     for line in cautions(worked.result.cautions):
         tell(f"  {line}")
 

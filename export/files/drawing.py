@@ -45,7 +45,11 @@ class _Made:
         within = choices.within or setting.within
         self.marks = tuple(piece.mark for piece in result.pieces)
         few = links_drawn(result)
-        said = [_within(within), *([] if few else ["Links are too many to be drawn one by one"])]
+        wording = Wording(result.setting.drawing_unit)
+        said = [
+            f"Curves are drawn within {wording.fine(within)} of the true ones",
+            *([] if few else ["Links are too many to be drawn one by one"]),
+        ]
         self.picture = picture(result, Drawing(within, setting.curve == "arcs", few), extra=said)
         unit = result.setting.drawing_unit
         self.fmt = Format(setting.version, unit, self.picture.ratio / 1000 * Format(setting.version, unit).factor)
@@ -69,10 +73,6 @@ class _Made:
         """Check the document that was written."""
         assert self.document is not None, "the chunks are taken first"
         return {**checks.check(self.document, self.expected), "scale": self.picture.scale}
-
-
-def _within(within: float) -> str:
-    return f"Curves are drawn within {Wording('mm', 2).length(within)} mm of the true ones"
 
 
 def document(drawn: Picture, fmt: Format) -> Document:

@@ -79,10 +79,10 @@ def svg(result: Result, shown: Screen) -> str:
     """Return the picture on a screen as SVG."""
     room = (WIDTH - 2 * MARGIN) / SCREEN.heading
     head = [Text(LOOKS["mark"], line, (MARGIN, 0.0), SCREEN.heading) for line in wrapped(_title(result), room)]
-    foot = [Text(look, line, (MARGIN, 0.0), SCREEN.note) for look, line in _foot(result, shown)]
+    foot = _foot(result, shown)
     over = MARGIN + _height(head) + SCREEN.heading
     middle = over + shown.box[3] - shown.box[1] + MARGIN
-    high = middle + _height(foot) + MARGIN
+    high = middle + _height([line[0] for line in foot]) + MARGIN
     parts = [
         f'<svg xmlns="http://www.w3.org/2000/svg" width="{WIDTH:.0f}" height="{high:.0f}" '
         f'viewBox="0 0 {WIDTH:.0f} {high:.0f}" role="img" aria-labelledby="t d">',
@@ -90,7 +90,7 @@ def svg(result: Result, shown: Screen) -> str:
         f'<desc id="d">{escape(_description(result, shown))}</desc>',
         f"<style>{_STYLE}</style>",
         '<rect width="100%" height="100%" fill="#fff"/>',
-        *_column(head, MARGIN),
+        *_column([[line] for line in head], MARGIN),
     ]
     few = sum(_count(panel) for panel in shown.panels) <= _MOST_LINKS
     for number, panel in enumerate(shown.panels):
@@ -110,30 +110,43 @@ def _description(result: Result, shown: Screen) -> str:
     )
 
 
-def _foot(result: Result, shown: Screen) -> list[tuple[Look, str]]:
-    """The lines under the picture: what is not drawn, unit, what pulls include, cautions."""
+def _foot(result: Result, shown: Screen) -> list[list[Text]]:
+    """The lines under the picture, each of one text or more: what is not drawn, unit, what pulls include, cautions."""
     said = [f"Not drawn: {shown.rest}"] if shown.rest else []
     pulls = "; pulls are of the dead load only" if any(piece.pulls for piece in result.pieces) else ""
     said.append(f"Lengths in {result.setting.drawing_unit}{pulls}. The drawing carries all dimensions and marks.")
-    lines = [(LOOKS["note"], line) for line in said]
-    cautions = noting.words(result).cautions
-    lines += cautions[:_MOST_CAUTIONS]
-    if len(cautions) > _MOST_CAUTIONS:
-        lines.append((LOOKS["caution"], f"and {len(cautions) - _MOST_CAUTIONS} more cautions; the drawing has all"))
     room = (WIDTH - 2 * MARGIN) / SCREEN.note
-    return [(look, part) for look, line in lines for part in wrapped(line, room)]
+    lines = [[_note(part)] for line in said for part in wrapped(line, room)]
+    cautions = noting.words(result).cautions
+    for head, line in cautions[:_MOST_CAUTIONS]:
+        lines += _caution(head, line, room)
+    if len(cautions) > _MOST_CAUTIONS:
+        lines += _caution(f"and {len(cautions) - _MOST_CAUTIONS} more cautions", "the drawing has all", room)
+    return lines
+
+
+def _note(line: str, indent: float = 0.0) -> Text:
+    return Text(LOOKS["note"], line, (MARGIN + indent, 0.0), SCREEN.note)
+
+
+def _caution(head: str, line: str, room: float) -> list[list[Text]]:
+    """A caution's lines, the first after its head."""
+    first = replace(_note(head), look=LOOKS["caution"])
+    indent = first.width + SCREEN.note
+    beside, *under = wrapped(line, room, indent / SCREEN.note)
+    return [[first, *([_note(beside, indent)] if beside else [])], *([_note(part)] for part in under)]
 
 
 def _height(lines: Sequence[Text]) -> float:
     return sum(line.height * SCREEN.leading for line in lines)
 
 
-def _column(lines: Sequence[Text], top: float) -> list[str]:
+def _column(lines: Sequence[Sequence[Text]], top: float) -> list[str]:
     """Lines of text one under another from `top` down."""
     written, foot = [], top
     for line in lines:
-        foot += line.height * SCREEN.leading
-        written.append(_text(replace(line, at=(line.at[0], -foot))))
+        foot += line[0].height * SCREEN.leading
+        written += [_text(replace(text, at=(text.at[0], -foot))) for text in line]
     return written
 
 

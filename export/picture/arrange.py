@@ -86,16 +86,42 @@ def _arranged(
         blocks.insert(0, _Row((replace(foot.heading, at=(-foot.heading.box[0], -foot.heading.box[1])),)))
     left, bottom, _, _ = foot.notes.box
     stand_in = Panel("", "notes", 1.0, (), core=foot.notes.box, box=foot.notes.box, at=(-left, -bottom))
-    last = [*rest, *([] if foot.plan is None else [foot.plan])]
-    rows = list(_rows(last, narrow, sizes))
+    rows = _last_rows(rest, foot.plan, narrow, sizes)
     if narrow < sheet.width and rows:
+        if foot.plan is not None and foot.plan.line is not None:
+            if whole and not feed:
+                return None  # the plan would stand beside the notes, out of line with the elevation
+            rows = _in_line(rows)
         blocks.append(_with_notes(rows, stand_in, sheet.width - narrow, sizes))
     else:
-        blocks += [*rows, _Row((stand_in,))]
+        blocks = _in_line([*blocks, *rows, _Row((stand_in,))])
     if any(block.box[2] - block.box[0] > sheet.width for block in blocks):
         return None
     placed, sheets = _stacked(blocks, sheet, sizes, feed=feed)
     return None if placed is None else _read(placed, foot, sheets)
+
+
+def _last_rows(rest: Sequence[Panel], plan: Panel | None, width: float, sizes: Sizes) -> list[_Row]:
+    """Rows of what stands last; a plan that is to stand in line with an elevation begins one of its own."""
+    if plan is None:
+        return list(_rows(rest, width, sizes))
+    if plan.line is None:
+        return list(_rows([*rest, plan], width, sizes))
+    return [*_rows(rest, width, sizes), *_rows([plan], width, sizes)]
+
+
+def _in_line(rows: Sequence[_Row]) -> list[_Row]:
+    """Move the row of the plan, or that of the elevation, to the right until both ends stand in one line."""
+    ends = [one.at[0] + one.line for row in rows for one in row.panels if one.line is not None]
+    return [_moved(row, max(ends)) for row in rows] if ends else list(rows)
+
+
+def _moved(row: _Row, end: float) -> _Row:
+    lined = [one for one in row.panels if one.line is not None]
+    if not lined:
+        return row
+    by = end - lined[0].at[0] - (lined[0].line or 0.0)
+    return _Row(tuple(replace(one, at=(one.at[0] + by, one.at[1])) for one in row.panels))
 
 
 def _with_notes(rows: Sequence[_Row], notes: Panel, left: float, sizes: Sizes) -> _Row:

@@ -1,7 +1,7 @@
 """Dimensions in their places: in rows outside the figure, smallest nearest, no measure twice."""
 
 from collections.abc import Iterable, Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from typing import Literal
 
 import numpy as np
@@ -19,6 +19,7 @@ _SIDES = {
     "vertical": {"below": "left", "above": "left"},
     "level": {"below": "inside", "above": "inside"},
 }
+_UNDER = 10.0  # how much worse a text is that reaches under the figure, where other rows stand, than one over it
 _FAR = (
     30.0  # of a vertical dimension from its side, in heights of the text: there its lines would cross the whole figure
 )
@@ -36,6 +37,7 @@ class Measure:
     side: str
     rank: int
     text: str
+    tells: bool = False
 
     @property
     def extent(self) -> float:
@@ -69,7 +71,9 @@ def measures(dimensions: Iterable[Dimension], frame: Frame, wording: Wording) ->
         measure = _measure(dimension, frame, wording)
         if measure.extent < _SAME:
             continue
-        found.setdefault(_key(measure), measure)
+        first = found.setdefault(_key(measure), measure)
+        if measure.tells and not first.tells:
+            found[_key(measure)] = replace(first, tells=True)
     return list(found.values())
 
 
@@ -84,7 +88,7 @@ def _measure(dimension: Dimension, frame: Frame, wording: Wording) -> Measure:
     side = _SIDES.get(dimension.kind, {}).get(dimension.side, dimension.side)
     return Measure(
         dimension.kind, p, q, dimension.value, dimension.says, side, dimension.rank,
-        f"{text} {dimension.says}" if dimension.says else text,
+        f"{text} {dimension.says}" if dimension.says else text, dimension.tells,
     )  # fmt: skip
 
 
@@ -114,7 +118,18 @@ class _Entry:
     from_high: float
     row: int = 0
     shift: float = 0.0  # of the text's middle from the middle of the dimension line
-    outside: bool = False
+    outside: int = 0  # 1 beyond its upper end, -1 beyond its lower end, 0 over its line
+    height: float = 0.0  # of the text
+
+    @property
+    def wide(self) -> float:
+        """Width of its text."""
+        return Text(_LOOK, self.measure.text, (0, 0), self.height).width
+
+    @property
+    def size(self) -> tuple[int, float, float]:
+        """What orders the rows: those of greater size never stand nearer the figure where they overlap."""
+        return self.measure.rank, round(self.high - self.low, 6), self.low
 
 
 def outside(found: Sequence[Measure], per: float, core: Box, sizes: Sizes) -> Rows:
@@ -125,8 +140,7 @@ def outside(found: Sequence[Measure], per: float, core: Box, sizes: Sizes) -> Ro
         kind = "horizontal" if side in ("below", "above") else "vertical"
         entries = [_entry(measure, per) for measure in found if measure.side == side and measure.kind == kind]
         if entries:
-            _into_rows(entries, sizes)
-            _shift_texts(entries, sizes)
+            _into_rows(entries, _reach(rows.box, core, side, sizes), sizes)
             rows.placed += [_row_dimension(entry, side, core, per, sizes) for entry in entries]
             rows.box = around(rows.box, *(one.box for one in rows.placed))
     for side in ("left", "right"):
@@ -136,44 +150,77 @@ def outside(found: Sequence[Measure], per: float, core: Box, sizes: Sizes) -> Ro
     return rows
 
 
+def _reach(box: Box, core: Box, side: str, sizes: Sizes) -> tuple[float, float]:
+    """From where to where texts may stand along a side: beside the rows under the figure, if these leave it free."""
+    if side in ("below", "above"):
+        return core[0], core[2]
+    clear = 0.5 * sizes.first_row  # strokes and extension lines reach past the figure, texts much further
+    free = box[0] >= core[0] - clear if side == "left" else box[2] <= core[2] + clear
+    return (box[1] if free else core[1]), core[3]
+
+
 def _entry(measure: Measure, per: float) -> _Entry:
     axis = 0 if measure.kind == "horizontal" else 1
     low, high = sorted(measure.points(per), key=lambda point: float(point[axis]))
     return _Entry(measure, float(low[axis]), float(high[axis]), float(low[1 - axis]), float(high[1 - axis]))
 
 
+def _settle_text(entry: _Entry, lines: Floats, reach: tuple[float, float], sizes: Sizes) -> None:
+    """Put a text over its line, smaller if need be, off the extension `lines` of what may stand further out.
+
+    Where there is no room for it, it stands beyond the end where it is crossed by fewer, and reaches less far beyond
+    the figure, which is from `reach[0]` to `reach[1]`.
+    """
+    for height in (sizes.note, sizes.small):
+        entry.height = height
+        shift = _shift(entry, lines, sizes)
+        if shift is not None:
+            entry.shift = shift
+            return
+    entry.height = sizes.note
+    beyond = entry.wide + 3 * sizes.gap
+    ends = ((1, entry.high, entry.high + beyond), (-1, entry.low - beyond, entry.low))
+    entry.outside = min(
+        ends,
+        key=lambda end: (
+            int(((lines > end[1] + _SAME) & (lines < end[2] - _SAME)).sum()),
+            max(0.0, end[2] - reach[1], (reach[0] - end[1]) * _UNDER),
+        ),
+    )[0]
+
+
+def _shift(entry: _Entry, lines: Floats, sizes: Sizes) -> float | None:
+    """How far from the middle of its line a text stands clear of extension lines; None where it finds no room."""
+    middle = (entry.low + entry.high) / 2
+    room = (entry.high - entry.low - entry.wide) / 2 - sizes.gap
+    if room < 0:
+        return None
+    clear = entry.wide / 2 + 0.5 * sizes.gap
+    shifts = sorted(np.linspace(-room, room, 41).tolist(), key=abs)
+    return next((shift for shift in shifts if (np.abs(lines - middle - shift) > clear).all()), None)
+
+
 def _room(entry: _Entry, sizes: Sizes) -> tuple[float, float]:
-    """What an entry takes of its row: its own length, or with a text too wide for it, that beyond its upper end."""
-    wide = Text(_LOOK, entry.measure.text, (0, 0), sizes.note).width
-    entry.outside = wide + 2 * sizes.gap > entry.high - entry.low
-    return entry.low, entry.high + (wide + 3 * sizes.gap if entry.outside else 0.0)
+    """What an entry takes of its row: its own length, and that of a text beyond one of its ends."""
+    beyond = entry.wide + 3 * sizes.gap if entry.outside else 0.0
+    return entry.low - (beyond if entry.outside < 0 else 0.0), entry.high + (beyond if entry.outside > 0 else 0.0)
 
 
-def _into_rows(entries: list[_Entry], sizes: Sizes) -> None:
-    """Settle the rows: by rank, then smallest nearest; one that would overlap another goes a row further out."""
-    entries.sort(key=lambda entry: (entry.measure.rank, round(entry.high - entry.low, 6), entry.low))
-    taken: list[tuple[float, float, int]] = []
+def _into_rows(entries: list[_Entry], reach: tuple[float, float], sizes: Sizes) -> None:
+    """Settle the rows: by rank, then smallest nearest; what would overlap another stands further out than that."""
+    entries.sort(key=lambda entry: entry.size)
+    taken: list[tuple[float, float, _Entry]] = []
     touch = 0.1 * sizes.gap  # dimensions of one chain meet at their ends
-    for entry in entries:
+    for number, entry in enumerate(entries):
+        lines = np.array([end for other in entries[number + 1 :] for end in (other.low, other.high)])
+        _settle_text(entry, lines, reach, sizes)
         low, high = _room(entry, sizes)
-        over = [row for other_low, other_high, row in taken if low < other_high - touch and high > other_low + touch]
-        entry.row = max(over, default=-1) + 1
-        taken.append((low, high, entry.row))
-
-
-def _shift_texts(entries: Sequence[_Entry], sizes: Sizes) -> None:
-    """Move texts along their line off the extension lines of rows further out."""
-    for entry in entries:
-        if entry.outside:
-            continue
-        wide = Text(_LOOK, entry.measure.text, (0, 0), sizes.note).width
-        lines = np.array([end for other in entries if other.row > entry.row for end in (other.low, other.high)])
-        middle = (entry.low + entry.high) / 2
-        room = (entry.high - entry.low - wide) / 2 - sizes.gap
-        for shift in sorted(np.linspace(-room, room, 41), key=abs):
-            if not len(lines) or (np.abs(lines - middle - shift) > wide / 2 + 0.5 * sizes.gap).all():
-                entry.shift = float(shift)
-                break
+        met = [other for other_low, other_high, other in taken if low < other_high - touch and high > other_low + touch]
+        # what only its text meets may stand nearer the figure than that
+        under = [other.row for other in met if entry.low < other.high - touch and entry.high > other.low + touch]
+        rows = {other.row for other in met}
+        entry.row = next(row for row in range(max(under, default=-1) + 1, len(entries) + 1) if row not in rows)
+        taken.append((low, high, entry))
 
 
 def _row_dimension(entry: _Entry, side: str, core: Box, per: float, sizes: Sizes) -> Placed:
@@ -186,19 +233,23 @@ def _row_dimension(entry: _Entry, side: str, core: Box, per: float, sizes: Sizes
     def point(along: float, across: float) -> tuple[float, float]:
         return (across, along) if upright else (along, across)
 
-    wide = Text(_LOOK, entry.measure.text, (0, 0), sizes.note).width
-    middle = entry.high + 2 * sizes.gap + wide / 2 if entry.outside else (entry.low + entry.high) / 2 + entry.shift
-    end = middle + wide / 2 if entry.outside else entry.high
+    beyond = 2 * sizes.gap + entry.wide / 2
+    middle = (entry.low + entry.high) / 2 + entry.shift
+    start, end = entry.low, entry.high
+    if entry.outside > 0:
+        middle, end = entry.high + beyond, entry.high + beyond + entry.wide / 2
+    elif entry.outside < 0:
+        middle, start = entry.low - beyond, entry.low - beyond - entry.wide / 2
     paths = [
         *_extension(point(entry.low, entry.from_low), point(entry.low, level), away, upright, sizes),
         *_extension(point(entry.high, entry.from_high), point(entry.high, level), away, upright, sizes),
-        Path(_LOOK, np.array([point(entry.low, level), point(end, level)])),
+        Path(_LOOK, np.array([point(start, level), point(end, level)])),
         oblique(np.array(point(entry.low, level)), sizes, np.pi / 2 if upright else 0.0),
         oblique(np.array(point(entry.high, level)), sizes, np.pi / 2 if upright else 0.0),
     ]
     foot = level - sizes.gap * 0.6 if upright else level + sizes.gap * 0.6
     angle = np.pi / 2 if upright else 0.0
-    text = Text(_LOOK, entry.measure.text, point(middle, foot), sizes.note, "centre", angle)
+    text = Text(_LOOK, entry.measure.text, point(middle, foot), entry.height, "centre", angle)
     return placed(entry.measure, text, angle, point((entry.low + entry.high) / 2, level), paths)
 
 

@@ -61,6 +61,8 @@ def enter(ground: Ground, shown: Seen, drawn: Drawn, per: float) -> None:
     _enter_paths(ground, drawn.paths)
     for circle in drawn.circles:
         ground.area(corners_of(circle.box), HEAVY)
+    for text in drawn.texts:
+        ground.area(text.corners, TEXT)
     for one in drawn.dimensions:
         _enter_paths(ground, one.paths)
         ground.area(one.text.corners, TEXT)

@@ -73,6 +73,16 @@ class Ground:
         middle = (corners[0] + corners[3]) / 2, (corners[1] + corners[2]) / 2
         return not (self.crosses(*middle, bits) or self.meets(self._spread(corners), bits))
 
+    def free_disc(self, middle: Floats, radius: float) -> bool:
+        """Return whether a disc is inside and touches nothing."""
+        (x, y), (left, bottom, right, top) = middle.tolist(), self.box
+        if x - radius < left or y - radius < bottom or x + radius > right or y + radius > top:
+            return False
+        if self.free((x - radius, y - radius, x + radius, y + radius)):
+            return True
+        count = math.ceil(4 * radius / self.cell) + 1
+        return not self.meets(middle + radius * _disc(count), ANY)
+
     def room_for(self, text: Text, margin: float) -> bool:
         """Return whether a text, and a margin round it, touches nothing."""
         if text.angle == 0:
@@ -106,6 +116,16 @@ class Ground:
         rows, columns = place[:, 1].astype(np.int64), place[:, 0].astype(np.int64)
         inside = (rows >= 0) & (columns >= 0) & (rows < self.cells.shape[0]) & (columns < self.cells.shape[1])
         return rows, columns, inside
+
+
+@lru_cache(maxsize=256)
+def _disc(count: int) -> Floats:
+    """Points of a grid, `count` along and across, over the disc round 0 of radius 1, (k, 2)."""
+    grid = np.linspace(-1.0, 1.0, max(3, count))
+    points = np.stack(np.meshgrid(grid, grid), axis=-1).reshape(-1, 2)
+    inside = points[(points * points).sum(axis=1) <= 1.0]
+    inside.setflags(write=False)
+    return np.asarray(inside)
 
 
 @lru_cache(maxsize=4096)

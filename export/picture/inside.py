@@ -16,7 +16,7 @@ _SLIDES = (0.0, 0.15, -0.15, 0.3, -0.3)  # of the text's middle along the line, 
 _RINGS = (2.0, 3.5, 5.0, 7.0, 10.0, 14.0, 18.0)  # how far off a text with a leader is tried, in its heights
 _WAYS = 16
 _DROPS = (1.6, -1.6, 2.6, 4.0, -3.0, 5.5, 7.0, 9.0, 12.0)  # of a level's text under its point, in its heights
-_LEANS = (0.0, 1.0, -1.0, 2.5, -2.5)  # of its leader to the side, in the same
+_LEANS = (0.0, 1.0, -1.0, 2.5, -2.5, 5.0, -5.0, 8.0, -8.0, 12.0, -12.0)  # of its leader to the side, in the same
 _BEFORE = (0.0, 1.0, 0.5, 0.25, 0.75)  # how much of its line is left of the leader
 _OFFSETS = (1.0, 1.8, 2.6, 3.4)  # of an aligned dimension outside the figure, in first rows
 
@@ -38,29 +38,47 @@ class Inside:
     left: list[Left] = field(default_factory=list)
 
 
-def inside(found: Sequence[Measure], per: float, ground: Ground, sizes: Sizes) -> Inside:
-    """Place the dimensions that stand at what they measure, and enter them into the ground.
+_Lines = Sequence[tuple[Floats, Floats, list[Path]]]
+
+
+def lines(found: Sequence[Measure], per: float, ground: Ground, sizes: Sizes) -> _Lines:
+    """Return the lines of dimensions that stand at what they measure, and enter them into the ground.
+
+    All are drawn before any mark or text is placed, so that none comes to lie on a later line.
+    """
+    drawn = [_line(measure, per, ground, sizes) for measure in found]
+    for start, end, _ in drawn:
+        ground.lines(np.stack([start, end]), LIGHT)
+    return drawn
+
+
+def inside(found: Sequence[Measure], drawn: _Lines, ground: Ground, sizes: Sizes) -> Inside:
+    """Place the texts of dimensions whose lines are `drawn`, and enter them into the ground.
 
     Where there is no room for all of them, all are tried again with smaller text.
     """
     before = ground.cells.copy()
-    result = _inside(found, per, ground, sizes)
+    result = _inside(found, drawn, ground, sizes)
     if result.left:
         first, ground.cells = ground.cells, before
-        smaller = _inside(found, per, ground, replace(sizes, note=sizes.small))
-        if len(smaller.left) < len(result.left):
+        smaller = _inside(found, drawn, ground, replace(sizes, note=sizes.small))
+        if _loss(smaller, found) < _loss(result, found):
             return smaller
         ground.cells = first
     return result
 
 
-def _inside(found: Sequence[Measure], per: float, ground: Ground, sizes: Sizes) -> Inside:
-    """Lines of all of them are drawn before any text is placed, so that no text comes to lie on a later line."""
+def _loss(result: Inside, found: Sequence[Measure]) -> tuple[int, int]:
+    """How many found no room, and how early the first of them stands among all: what tells most stands first."""
+    first = min(
+        (number for number, one in enumerate(found) if any(one is left.measure for left in result.left)), default=0
+    )
+    return len(result.left), -first
+
+
+def _inside(found: Sequence[Measure], drawn: _Lines, ground: Ground, sizes: Sizes) -> Inside:
     result = Inside()
-    lines = [_line(measure, per, ground, sizes) for measure in found]
-    for start, end, _ in lines:
-        ground.lines(np.stack([start, end]), LIGHT)
-    for measure, (start, end, paths) in zip(found, lines, strict=True):
+    for measure, (start, end, paths) in zip(found, drawn, strict=True):
         done = _with_text(measure, (start, end), paths, ground, sizes)
         if done is None:
             result.left.append(Left(measure, (start, end), paths))
@@ -169,12 +187,13 @@ def _with_text(
             ground.area(text.corners, TEXT)
             return _done(measure, line, text, paths)
     middle = (start + end) / 2
-    for text, tip in _led_texts(measure.text, middle, sizes):
-        if ground.room_for(text, 0.35 * sizes.gap) and not ground.crosses(middle, tip, TEXT):
-            leader = np.stack([middle, tip])
-            ground.area(text.corners, TEXT)
-            ground.lines(leader, LIGHT)
-            return _done(measure, line, text, [*paths, Path(_LOOK, leader)])
+    for bits in (HEAVY | TEXT, TEXT):  # a leader across the thing itself only where there is no other
+        for text, tip in _led_texts(measure.text, middle, sizes):
+            if ground.room_for(text, 0.35 * sizes.gap) and not ground.crosses(middle, tip, bits):
+                leader = np.stack([middle, tip])
+                ground.area(text.corners, TEXT)
+                ground.lines(leader, LIGHT)
+                return _done(measure, line, text, [*paths, Path(_LOOK, leader)])
     return None
 
 

@@ -22,7 +22,8 @@ _FEW_DROPPED = 12  # marks without room that a smaller scale may still find it f
 _MORE_SHEETS = 1.5  # times the fewest sheets possible: so much a larger scale may cost
 _TITLE_ROOM = 12.0  # at least this much stands under each view, mm: mark and two lines
 _MARKS: tuple[Marks, ...] = ("free", "within")  # tried in turn
-_NOTES_WIDTH = 120.0  # of the notes' column, mm
+# Widths of the notes' columns, mm, and how many, tried in turn: the cautions beside the rest, or under it.
+_NOTES = ((120.0, 2), (90.0, 2), (170.0, 1), (120.0, 1))
 
 
 @dataclass(frozen=True)
@@ -33,6 +34,7 @@ class Contents:
     site: Site | None
     words: noting.Words
     wording: Wording
+    ends: tuple[float, float] | None = None  # of elevation and plan, m, where the plan stands in line under it
 
     @property
     def largest(self) -> float:
@@ -51,7 +53,8 @@ def contents(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> 
         for view in piece.views
     )
     site = planning.site(result, drawing) if planning.wanted(result) else None
-    return Contents(subjects, site, words, wording)
+    ends = planning.in_line(subjects[0], site) if site is not None else None
+    return Contents(subjects, site, words, wording, ends)
 
 
 def picture(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> Picture:
@@ -137,12 +140,32 @@ def _candidates(found: Contents) -> Iterator[Scale]:
 def _unmarked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged | None:
     """Everything but the marks in place at a scale, if it fits: first tried with no more than the geometry."""
     print_ = Print(scale.ratio / 1000, PAPER, found.wording)
-    heading = noting.heading(found.words, PAPER, width=on.width)
-    notes = noting.notes(found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH, dropped=1, sheets=2)
-    if arrange(_bare(found, print_), Foot(heading, None, notes), on, PAPER, feed=feed) is None:
+    if _arranged(found, scale, (_bare(found, print_), None), on, feed=feed) is None:
         return None
-    views, plan = _panels(found, print_, marks="none")
-    return arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed)
+    return _arranged(found, scale, _panels(found, print_, marks="none"), on, feed=feed)
+
+
+def _arranged(  # noqa: PLR0913 - what an arrangement depends on
+    found: Contents,
+    scale: Scale,
+    panels: tuple[list[Panel], Panel | None],
+    on: Sheet,
+    *,
+    dropped: int = 1,
+    sheets: int = 2,
+    feed: bool = False,
+) -> Arranged | None:
+    """Views, plan and notes in place, the notes in the first of their shapes that has room."""
+    heading = noting.heading(found.words, PAPER, width=on.width)
+    for width, columns in _NOTES:
+        notes = noting.notes(
+            found.words, scale, on, found.wording, PAPER,
+            width=width, dropped=dropped, sheets=sheets, columns=columns,
+        )  # fmt: skip
+        arranged = arrange(panels[0], Foot(heading, panels[1], notes), on, PAPER, feed=feed)
+        if arranged is not None:
+            return arranged
+    return None
 
 
 def _marked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged | None:
@@ -152,16 +175,12 @@ def _marked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> 
     still less.
     """
     print_ = Print(scale.ratio / 1000, PAPER, found.wording)
-    heading = noting.heading(found.words, PAPER, width=on.width)
     for marks in _MARKS:
         views, plan = _panels(found, print_, marks=marks)
         dropped = sum(panel.dropped for panel in views) + (plan.dropped if plan else 0)
         sheets = 1
         for _ in range(3):  # the notes say how many sheets there are, and may take another line for it
-            notes = noting.notes(
-                found.words, scale, on, found.wording, PAPER, width=_NOTES_WIDTH, dropped=dropped, sheets=sheets
-            )
-            arranged = arrange(views, Foot(heading, plan, notes), on, PAPER, feed=feed)
+            arranged = _arranged(found, scale, (views, plan), on, dropped=dropped, sheets=sheets, feed=feed)
             if arranged is None or arranged.sheets == sheets:
                 break
             sheets = arranged.sheets
@@ -183,7 +202,13 @@ def _bare(found: Contents, print_: Print) -> list[Panel]:
 
 def _panels(found: Contents, print_: Print, *, marks: Marks) -> tuple[list[Panel], Panel | None]:
     views = [elevation(one, print_, marks=marks) for one in found.subjects]
-    plan = None if found.site is None else planning.plan(found.site, print_, marks=marks)
+    if found.site is None:
+        return views, None
+    plan = planning.plan(found.site, print_, marks=marks)
+    if found.ends is not None:
+        views[0], plan = (
+            replace(one, line=end / print_.per) for one, end in zip((views[0], plan), found.ends, strict=True)
+        )
     return views, plan
 
 

@@ -10,10 +10,11 @@ from export.picture import labels, symbols
 from export.picture.dimensions import Measure, measures, outside
 from export.picture.drawn import Drawn, enter, ground_of, printed
 from export.picture.ground import Ground
-from export.picture.inside import column, inside
+from export.picture.inside import column, inside, lines
 from export.picture.labels import Wanted
 from export.picture.looks import LOOKS
 from export.picture.sizes import Sizes
+from export.picture.strip import strip
 from export.picture.titles import title
 from export.picture.values import (
     Box,
@@ -33,6 +34,8 @@ _MOST_ASIDE = 6  # dimensions in a column beside a view; more are no longer told
 _END = 1e-4  # m: a line that ends within this of a support is held there
 _CROWDED = 12  # labels of a view from which on supports may stand for those behind them
 _BEHIND = 1.2  # in heights of a support's symbol: nearer ones cannot be told apart
+_FIRST = frozenset({"support", "fitting", "station"})  # marks placed first even where they are many
+_NARROW = 0.6  # of a figure's width: a wider text of a level may not find room under it
 _FEW = 40  # marks of a view that are placed before the dimensions inside it
 
 
@@ -89,16 +92,28 @@ def elevation(subject: Subject, print_: Print, *, marks: Marks = "free") -> Pane
     wanted = _symbols(subject, print_, drawn)
     core = around(geometry, drawn.box)
     held = _with_levels(subject.measures, core, per, sizes)
+    bay_marks = [mark for mark in wanted if mark.role == "bay"]
+    wanted = [mark for mark in wanted if mark.role != "bay"]
+    bays = strip(bay_marks, held[1], sizes)
+    if bays is not None and bays.rows == 1:
+        held = around(held, (held[0], bays.box[1], held[2], held[3]))
     rows = outside(subject.measures, per, held, sizes)
+    if bays is not None and bays.rows > 1:  # wider than their bays: extension lines would run through them
+        bays = strip(bay_marks, rows.box[1], sizes)
+    if bays is not None:
+        drawn.texts += bays.texts
+        drawn.dropped += bays.dropped
     drawn.dimensions += rows.placed
-    lines = _title(subject, core, print_)
-    over_title = (core[0], core[1], core[0] + max(line.box[2] for line in lines), core[1])
-    taken = around(rows.box, over_title, *labels.reserved(wanted, sizes))
+    said = _title(subject, core, print_)
+    over_title = (core[0], core[1], core[0] + max(line.box[2] for line in said), core[1])
+    aside = [] if bays is None else [bays.box]
+    aside += [_aside(measure, core, sizes) for measure in subject.measures if measure.kind == "level"]
+    taken = around(rows.box, over_title, *labels.reserved(wanted, sizes), *aside)
     if marks != "none":
         beside = [measure for measure in subject.measures if not measure.in_rows(per, held, sizes)]
         ground = ground_of(taken, sizes, free=marks == "free")
         _mark(subject, wanted, beside, ground, print_, drawn)
-    return with_title(_panel(subject, drawn, per, core, taken), lines, sizes)
+    return with_title(_panel(subject, drawn, per, core, taken), said, sizes)
 
 
 def _panel(subject: Subject, drawn: Drawn, per: float, core: Box, taken: Box) -> Panel:
@@ -133,12 +148,11 @@ def _symbols(subject: Subject, print_: Print, drawn: Drawn) -> list[Wanted]:
             if any(np.abs(at - other).max() < _BEHIND * sizes.symbol for other in shown):
                 continue
             shown.append(at)
-        along = None if label.along is None else frame.flat(label.along[None] + frame.origin)[0]
+        along = None if label.along is None else frame.flat(label.along[None] + frame.origin)[0] / per
         mark = _symbol(label, at, along, above=over, plan=is_plan(frame), print_=print_, drawn=drawn)
-        if label.text:
-            wanted.append(mark)
-    lines = lines_of(subject.piece) if subject.view.lines is None else subject.view.lines
-    for line in lines:
+        if label.text or label.below:
+            wanted.append(replace(mark, below=tuple(print_.wording.said(line) for line in label.below)))
+    for line in lines_of(subject.piece) if subject.view.lines is None else subject.view.lines:
         if line.role in ("floor", "ground") and not is_plan(frame):
             points = frame.flat(line.curve.points(per))
             drawn.paths += symbols.ground_hatching(points / per, sizes)
@@ -204,6 +218,14 @@ def _with_levels(found: Sequence[Measure], core: Box, per: float, sizes: Sizes) 
     return (core[0], min(core[1], foot), core[2], core[3])
 
 
+def _aside(measure: Measure, core: Box, sizes: Sizes) -> Box:
+    """The room a level takes beside a figure that is too narrow to have it under itself; else none."""
+    wide = Text(LOOKS["dimension"], measure.text, (0, 0), sizes.note).width
+    if wide < _NARROW * (core[2] - core[0]):
+        return core
+    return (core[0], core[1], core[2] + wide + 5 * sizes.gap, core[3])
+
+
 def _mark(
     subject: Subject, wanted: Sequence[Wanted], beside: Sequence[Measure], ground: Ground, print_: Print, drawn: Drawn
 ) -> None:
@@ -213,9 +235,10 @@ def _mark(
     """
     enter(ground, subject.seen, drawn, print_.per)
     few = len(wanted) <= _FEW
-    first = labels.place([mark for mark in wanted if few or mark.role == "support"], ground, print_.sizes)
-    within = inside(beside, print_.per, ground, print_.sizes)
-    rest = labels.place([mark for mark in wanted if not (few or mark.role == "support")], ground, print_.sizes)
+    measured = lines(beside, print_.per, ground, print_.sizes)
+    first = labels.place([mark for mark in wanted if few or mark.role in _FIRST], ground, print_.sizes)
+    within = inside(beside, measured, ground, print_.sizes)
+    rest = labels.place([mark for mark in wanted if not (few or mark.role in _FIRST)], ground, print_.sizes)
     drawn.dimensions += within.placed
     for placed in (first, rest):
         drawn.texts += placed.texts
@@ -228,7 +251,7 @@ def _mark(
     ):
         aside = []
     drawn.dimensions += aside
-    drawn.dropped = len(within.left) - len(aside) + first.dropped + rest.dropped
+    drawn.dropped += len(within.left) - len(aside) + first.dropped + rest.dropped
 
 
 def with_title(panel: Panel, lines: Sequence[Text], sizes: Sizes) -> Panel:

@@ -9,12 +9,13 @@ from export.picture import labels, symbols
 from export.picture.drawn import Drawn, enter, ground_of, printed
 from export.picture.labels import Wanted
 from export.picture.looks import LOOKS
-from export.picture.panels import Marks, Print, with_title
+from export.picture.panels import Marks, Print, Subject, with_title
 from export.picture.sizes import Sizes
 from export.picture.values import SITE_PLAN, Box, Floats, Group, Panel, Text, around
 from export.picture.views import Drawing, Seen, is_plan, seen_on_plan
 from geom.result import PLAN, Piece, Result
 
+_OVER = 2.2  # room for a mark over a plan that is no more than a line, in heights of the text
 _SMALLEST_CROSS = 0.25  # of its size, for rows of held points close together
 _SAME = 1e-6  # m: supports nearer than this on plan are one cross
 
@@ -39,6 +40,23 @@ def site(result: Result, drawing: Drawing) -> Site:
     return Site(result.pieces, shown, tuple(_held(result.pieces)))
 
 
+def in_line(subject: Subject, site: Site) -> tuple[float, float] | None:
+    """Return where an elevation and the plan have the left end of the only piece, m, where both show it alike.
+
+    None where its length is not seen on plan as in the elevation, as where it turns corners or lies across.
+    """
+    along = subject.view.frame.along
+    if len(site.pieces) != 1 or is_plan(subject.view.frame) or along[0] < 1.0 - _SAME:
+        return None
+    (low, high), (left, right) = (_reach(seen_) for seen_ in (subject.seen, site.seen[0]))
+    return (low, left) if abs((high - low) - (right - left)) < _SAME else None
+
+
+def _reach(shown: Seen) -> tuple[float, float]:
+    x = np.concatenate([np.zeros(0), *(stroke.points[:, 0] for stroke in shown.strokes)])
+    return (float(x.min()), float(x.max())) if len(x) else (np.nan, np.nan)
+
+
 def wanted(result: Result) -> bool:
     """Return whether a plan tells more than the views do: not where the only piece is drawn in plan already."""
     return not (len(result.pieces) == 1 and any(is_plan(view.frame) for view in result.pieces[0].views))
@@ -55,7 +73,8 @@ def plan(site: Site, print_: Print, *, marks: Marks = "free") -> Panel:
             mine.paths += symbols.held_point(at / per, sizes, share=share)
     core = around(core, *(mine.box for mine in drawn))
     wanted_marks = [*_names(site, per), *_supports(site, print_)]
-    taken = around(core, *labels.reserved(wanted_marks, sizes))
+    over = (core[0], core[1], core[2], core[3] + _OVER * sizes.note)
+    taken = around(over, *labels.reserved(wanted_marks, sizes))
     loose = Drawn()
     if marks != "none":
         ground = ground_of(taken, sizes, free=marks == "free")

@@ -1,5 +1,6 @@
 """The picture laid out anew for a screen: the sheet's text would be four pixels high there."""
 
+from collections import Counter
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 
@@ -27,8 +28,9 @@ _MOST_ABREAST = 3
 _MOST_PIECES = 12
 _HIGHEST = {1: 420.0, 2: 300.0, 3: 240.0}  # pixels of geometry, by how many stand abreast
 _WIDE, _WIDER = 2.2, 4.5  # width to height from which on a view stands with one other, or alone
+_SMALLER = 1.02  # a scale that is too large is made this much smaller than its overlap asks for
 _TRIES = 6  # each takes off what printed things stand over the column
-_MOST_MARKS = 12  # of a view; a net's marks are for its drawing
+_MOST_MARKS = 12  # of one kind in a view; a net's marks are for its drawing
 _FINE = 4000.0  # a curve is within its view's size over this: a quarter of a pixel
 
 
@@ -45,6 +47,10 @@ def screen(result: Result) -> Screen:
     """Return elevations, plan under them, for a screen: the first dozen pieces, three abreast at most."""
     wording = Wording(result.setting.drawing_unit)
     subjects = [_subject(result, number, wording) for number in range(min(len(result.pieces), _MOST_PIECES))]
+    if len(result.pieces) == 1:
+        found = _one(subjects[0], result, wording)
+        if found is not None:
+            return Screen(found, around(*(shifted(panel.box, panel.at) for panel in found)), "")
     placed: list[Panel] = []
     y = 0.0
     for row in _shared(subjects):
@@ -58,19 +64,45 @@ def screen(result: Result) -> Screen:
     return Screen(tuple(placed), box, listed(rest, 20))
 
 
+def _one(one: Subject, result: Result, wording: Wording) -> tuple[Panel, ...] | None:
+    """The elevation of the only piece and its plan in line under it at one scale; None where they are not alike."""
+    site = _fine_site(result)
+    ends = planning.in_line(one, site)
+    if ends is None:
+        return None
+    column = WIDTH - 2 * MARGIN
+    over = _fitted(one, column, _HIGHEST[1], wording)
+    per = over.per
+    for _ in range(_TRIES):
+        over, under = elevation(one, Print(per, SCREEN, wording)), planning.plan(site, Print(per, SCREEN, wording))
+        x, left = (end / per for end in ends)
+        # both from the left margin, then the one whose line is nearer it moved to the other
+        line = max(x - over.box[0], left - under.box[0])
+        right = max(line - x + over.box[2], line - left + under.box[2])
+        if right <= column:
+            break
+        per *= right / column * _SMALLER
+    first = replace(over, at=(MARGIN + line - x, -over.box[3]))
+    second = replace(under, at=(MARGIN + line - left, first.at[1] + over.box[1] - _BETWEEN - under.box[3]))
+    return first, second
+
+
 def _subject(result: Result, number: int, wording: Wording) -> Subject:
     piece = result.pieces[number]
     view = piece.views[0]
     coarse = subject(piece, view, Drawing(1.0), wording).seen.box
     within = max(coarse[2] - coarse[0], coarse[3] - coarse[1], 1e-6) / _FINE
     full = subject(piece, view, Drawing(within), wording)
-    marks = full.labels if len(full.labels) <= _MOST_MARKS else tuple(replace(one, text="") for one in full.labels)
+    counts = Counter(one.role for one in full.labels)
+    marks = tuple(one if counts[one.role] <= _MOST_MARKS else replace(one, text="", below=()) for one in full.labels)
     return replace(full, labels=marks, measures=tuple(_telling(full.measures)))
 
 
 def _telling(found: Sequence[Measure]) -> list[Measure]:
-    """The dimensions that tell the shape: the widest (span), the sag or rise, the lowest level."""
-    told: list[Measure] = []
+    """The dimensions that tell the shape as it was asked for; else the widest, the sag or rise, the lowest level."""
+    told = [one for one in found if one.tells]
+    if told:
+        return told
     named = [one for one in found if one.says] or list(found)
     level = [one for one in named if one.kind == "horizontal"]
     told += [max(level, key=lambda one: one.value)] if level else []
@@ -135,11 +167,16 @@ def _row(row: Sequence[Subject], y: float, wording: Wording) -> tuple[list[Panel
     return placed, y - (box[3] - box[1]) - _BETWEEN
 
 
+def _fine_site(result: Result) -> planning.Site:
+    """The plan to be printed, its curves as fine as a screen shows."""
+    box = around(*(one.box for one in planning.site(result, Drawing(1.0)).seen))
+    return planning.site(result, Drawing(max(box[2] - box[0], box[3] - box[1], 1e-9) / _FINE))
+
+
 def _plan(result: Result, wording: Wording) -> Panel:
-    coarse = planning.site(result, Drawing(1.0))
-    box = around(*(one.box for one in coarse.seen))
+    site = _fine_site(result)
+    box = around(*(one.box for one in site.seen))
     size = np.maximum([box[2] - box[0], box[3] - box[1]], 1e-9)
-    site = planning.site(result, Drawing(float(size.max()) / _FINE))
     wide = WIDTH - 2 * MARGIN
     for _ in range(_TRIES):
         per = float(max(size[0] / wide, size[1] / _HIGHEST[1]))

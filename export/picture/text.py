@@ -48,12 +48,15 @@ def width(text: str) -> float:
     return sum(WIDTHS.get(character, WIDEST) for character in text)
 
 
-def wrapped(text: str, widest: float) -> list[str]:
-    """Return the text in lines of at most `widest` cap heights, broken at spaces; words are where they are longer."""
-    lines: list[str] = []
+def wrapped(text: str, widest: float, indent: float = 0.0) -> list[str]:
+    """Return the text in lines of at most `widest` cap heights, broken at spaces; words are where they are longer.
+
+    The first line is shorter by an `indent`, and empty where not even a word has room after it.
+    """
+    lines: list[str] = [""] if indent else []
     for word in chain.from_iterable(_parted(word, widest) for word in text.split()):
-        longer = f"{lines[-1]} {word}" if lines else word
-        if lines and width(longer) <= widest:
+        longer = f"{lines[-1]} {word}" if lines and lines[-1] else word
+        if lines and width(longer) <= widest - (indent if len(lines) == 1 else 0.0):
             lines[-1] = longer
         else:
             lines.append(word)

@@ -180,6 +180,7 @@ class Panel:
     box: Box = NOTHING  # of everything, print units
     at: tuple[float, float] = (0.0, 0.0)  # where its origin is on the print
     dropped: int = 0  # marks there was no room for
+    line: float | None = None  # the geometry's left end, print units, where elevation and plan stand in one line
 
 
 @dataclass(frozen=True, slots=True)

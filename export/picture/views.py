@@ -78,7 +78,7 @@ def _thickness(piece: Piece, frame: Frame) -> Iterable[Stroke]:
         faces = [points for body in prisms for points in (body.outline, body.outline + body.depth)]
         outline = shapely.convex_hull(shapely.MultiPoint(frame.flat(np.concatenate(faces))))
         if isinstance(outline, shapely.Polygon):
-            yield Stroke(look("edge"), np.asarray(outline.exterior.coords)[:-1], closed=True)
+            yield Stroke(look("outline"), np.asarray(outline.exterior.coords)[:-1], closed=True)
 
 
 def is_plan(frame: Frame) -> bool:

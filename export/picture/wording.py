@@ -1,18 +1,20 @@
 """Figures as a drawing says them: rounded to what a shop can do, in the drawing's unit."""
 
 import math
+import re
 from collections.abc import Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 
 from geom import units
-from geom.result import Quantity
+from geom.result import Quantity, Said
 
 # A shop works to 1 mm or 1/16 in; parts cut by machine to 0.1 mm (common practice).
 _DECIMALS = {"mm": 0, "cm": 1, "m": 3}
 _INCH = 0.0254
 _SIXTEENTHS = 16
 _KILO = 1000.0
+_METRIC = re.compile(r"(?<![\w.,/-])(-?\d+(?:\.\d+)?) (mm|cm|m)(?![\w/²³])")
 
 
 @dataclass(frozen=True, slots=True)
@@ -38,6 +40,25 @@ class Wording:
     def length_with_unit(self, metres: float) -> str:
         """Return a length that says its unit: `1884 mm`; feet and inches do so by themselves."""
         return self.length(metres) if self.unit in ("ft", "in") else f"{self.length(metres)} {self.unit}"
+
+    def said(self, line: Said) -> str:
+        """Return a line of text with its lengths, as dimensions say them."""
+        return line.text.format(*(self.length(length) for length in line.lengths))
+
+    def fine(self, metres: float) -> str:
+        """Return a small length to two figures, with its unit: `0.5 mm`, `0.02"`."""
+        if self.unit in ("ft", "in"):
+            return f'{float(f"{metres / _INCH:.2g}"):.6g}"'
+        return f"{float(f'{metres / units.UNITS[self.unit].metres:.2g}'):.6g} {self.unit}"
+
+    def retold(self, text: str) -> str:
+        """Return a text with its metric lengths said in feet and inches, where that is the drawing's unit."""
+        if self.unit not in ("ft", "in"):
+            return text
+        return _METRIC.sub(lambda found: self._retold(float(found[1]) * units.UNITS[found[2]].metres), text)
+
+    def _retold(self, metres: float) -> str:
+        return self.length(metres) if abs(metres) >= _INCH else self.fine(metres)
 
     def quantity(self, quantity: Quantity) -> str:
         """Return a quantity as a line of text says it: `pin to pin 1884 mm`, `35 links`, `pull 1.18 kN`."""

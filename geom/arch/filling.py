@@ -10,8 +10,8 @@ from geom.arch.bodies import flats, solids
 from geom.arch.cautions import cautions
 from geom.arch.figures import ArchFigures, BlockRows, OrdinateRows, WidthRows
 from geom.arch.making import Made, value_of
-from geom.arch.ring import LineName
-from geom.arch.views import block_mark, labels, lines, support_mark, view
+from geom.arch.ring import LineName, Ring
+from geom.arch.views import beds, block_mark, labels, lines, support_mark, view
 from geom.result import NAN, Column, Cut, Piece, Pull, Quantity, Table, Unit, Used, fixed
 from geom.setting.options import Setting
 
@@ -20,6 +20,7 @@ Floats = NDArray[np.float64]
 _METRES, _NONE, _KILOGRAMS = Unit("m"), Unit(""), Unit("kg")
 _SOLVED = 1e-9  # of the value: over what any of the room's solvers leaves, a millionth of what can be measured
 _DEGREES = Unit("deg", 180.0 / np.pi)
+_SAME = 1e-6  # m: widths nearer than this are one on any drawing
 
 
 def fill(asked: AskedArch, made: Made, setting: Setting) -> Piece:
@@ -43,7 +44,7 @@ def fill(asked: AskedArch, made: Made, setting: Setting) -> Piece:
         copies=asked.copies,
         intended=Quantity(asked.fact, wanted, unit),
         difference=Quantity(asked.fact, _difference(asked, made), unit),
-        facts=_facts(figures, mass),
+        facts=_facts(asked, made.ring, figures, mass),
         lines=lines(asked, made, setting.drawing.within),
         labels=labels(asked, made),
         solids=solids(asked, made, setting),
@@ -143,16 +144,34 @@ def _widths(asked: AskedArch, made: Made) -> WidthRows | None:
     return None if made.widths is None else WidthRows(fixed(asked.wanted.widths_at), fixed(made.widths))
 
 
-def _facts(figures: ArchFigures, mass: float) -> tuple[Quantity, ...]:
-    """Return what a shop needs under the elevation."""
+def _facts(asked: AskedArch, ring: Ring, figures: ArchFigures, mass: float) -> tuple[Quantity, ...]:
+    """Return what a shop needs under the elevation: sizes over all, the feet's beds, what the ring is made of."""
+    outline = np.concatenate([ring.sample(name, asked.profile.thickness / 1000) for name in ("intrados", "extrados")])
+    wide, high = np.ptp(outline, axis=0).tolist()
     blocks = (Quantity("blocks", float(len(figures.blocks.mark))),) if figures.blocks else ()
+    joint = (Quantity("joint", asked.wanted.joint, _METRES),) if figures.blocks and asked.wanted.joint else ()
     return (
         *blocks,
-        Quantity("clear span", figures.clear_span, _METRES),
+        *joint,
+        Quantity("width over all", wide, _METRES),
+        Quantity("height over all", high, _METRES),
+        *_beds(asked, ring),
+        Quantity("thickness", asked.profile.thickness, _METRES),
+        Quantity("depth", asked.depth, _METRES),
         Quantity("length of axis", figures.axis_length, _METRES),
         Quantity("mass", mass, _KILOGRAMS),
         Quantity("horizontal thrust", figures.thrust, Unit("N")),
     )
+
+
+def _beds(asked: AskedArch, ring: Ring) -> tuple[Quantity, ...]:
+    """Return the widths of the beds the ring stands on, level feet's alone: a radial foot is as wide as it is thick."""
+    if asked.profile.foot != "level":
+        return ()
+    first, second = beds(ring)
+    if abs(first - second) < _SAME:
+        return (Quantity("foot bed", first, _METRES),)
+    return (Quantity("first foot bed", first, _METRES), Quantity("second foot bed", second, _METRES))
 
 
 def _tables(asked: AskedArch, figures: ArchFigures) -> list[Table]:
@@ -189,8 +208,8 @@ def _block_columns(rows: BlockRows) -> tuple[Column, ...]:
         Column("form", _NONE, "form (mirror images alike)", rows.form),
         Column("face", _METRES, "length along the intrados", rows.face),
         Column("back", _METRES, "length along the extrados", rows.back),
-        Column("joint_from", _DEGREES, "slope of the axis at its first joint", rows.joint_from),
-        Column("joint_to", _DEGREES, "slope of the axis at its second joint", rows.joint_to),
+        Column("joint_from", _DEGREES, "first joint: slope of the axis there; 90 at a level foot", rows.joint_from),
+        Column("joint_to", _DEGREES, "second joint: slope of the axis there; -90 at a level foot", rows.joint_to),
         Column("area", Unit("m2"), "area of its elevation", rows.area),
         Column("volume", Unit("m3"), "volume", rows.volume),
         Column("mass", _KILOGRAMS, "mass", rows.mass),

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from dataclasses import replace
 from typing import Literal
 
 import numpy as np
@@ -13,7 +14,7 @@ from geom.arch.making import Made
 from geom.arch.ring import LineName, Ring
 from geom.arch.setting_out import datum
 from geom.curves import Catenary, Curve, Offset, Polyline, Segment
-from geom.result import Z_UP, Dimension, DimensionKind, Frame, Label, Line, View, fixed
+from geom.result import Z_UP, Dimension, DimensionKind, Frame, Label, Line, Said, View, fixed
 
 Floats = NDArray[np.float64]
 Side = Literal["below", "above", "left", "right", "inside"]
@@ -43,7 +44,7 @@ def _lines(asked: AskedArch, made: Made, within: float) -> Iterator[Line]:
         joints = made.stones.joints
         for ends in np.stack([joints.bottom, joints.top], axis=1):
             yield Line("joint", Segment(*plane.placed(ends)), mark)
-    for foot, top in _ordinates(asked, made):
+    for _, foot, top in _ordinates(asked, made):
         yield Line("ordinate", Segment(foot, top), mark)
 
 
@@ -74,9 +75,24 @@ def labels(asked: AskedArch, made: Made) -> tuple[Label, ...]:
     ends = ((plane.start, "from"), (plane.end, "to"))
     springings = tuple(Label(fixed(at), support_mark(asked, end), "support") for at, end in ends)
     if made.stones is None:
-        return springings
-    centres = plane.placed(made.stones.blocks.centroid)
-    return (*springings, *(Label(at, block_mark(asked, number), "part") for number, at in enumerate(centres)))
+        return (*springings, *_stations(asked, made))
+    return (*springings, *_block_labels(asked, made), *_stations(asked, made))
+
+
+def _block_labels(asked: AskedArch, made: Made) -> Iterator[Label]:
+    """Marks in the outer half of the blocks, where the axis does not cross them, with the way to their backs."""
+    assert made.stones is not None  # asked before
+    blocks = made.stones.blocks
+    backs = asked.plane.placed(made.ring.extrados.point(blocks.outer.mean(axis=1)))
+    middles = (asked.plane.placed(blocks.centroid) + backs) / 2
+    for number, (middle, back) in enumerate(zip(middles, backs, strict=True)):
+        yield Label(middle, block_mark(asked, number), "block", along=back - middle)
+
+
+def _stations(asked: AskedArch, made: Made) -> Iterator[Label]:
+    """Distances of the ordinates along the springing line, under their feet."""
+    for x, foot, _ in _ordinates(asked, made):
+        yield Label(foot, "", "station", below=(Said("{}", (x,)),))
 
 
 def view(asked: AskedArch, made: Made) -> View:
@@ -88,12 +104,22 @@ def view(asked: AskedArch, made: Made) -> View:
 def _dimensions(asked: AskedArch, made: Made) -> Iterator[Dimension]:
     ring, face = made.ring, asked.profile.face
     yield from _spans(asked, ring)
-    names: tuple[LineName, ...] = ("axis",) if face == "intrados" else (face,)
-    for name in (*names, "intrados"):
-        yield from _rise(asked, ring, name)
+    yield from _rise(asked, ring, "intrados")
+    yield from _rise(asked, ring, "extrados" if face == "intrados" else face)
     yield from _thicknesses(asked, ring)
-    for foot, top in _ordinates(asked, made):
+    for _, foot, top in _ordinates(asked, made):
         yield Dimension("vertical", foot, top, float(top[2] - foot[2]), "", "inside")
+    yield from _step(asked, made)
+
+
+def _step(asked: AskedArch, made: Made) -> Iterator[Dimension]:
+    """The step of the ordinates along the springing line, once, and where it begins."""
+    step = asked.wanted.step
+    if step is not None and _ordinates(asked, made):
+        ends = np.array([(0.0, datum(made.ring)), (step, datum(made.ring))])
+        says = f"steps from {asked.start.name or 'the first springing'}"
+        low, high = asked.plane.placed(ends)
+        yield Dimension("horizontal", low, high, step, says, "below", 0)
 
 
 def _spans(asked: AskedArch, ring: Ring) -> Iterator[Dimension]:
@@ -101,7 +127,11 @@ def _spans(asked: AskedArch, ring: Ring) -> Iterator[Dimension]:
     face = asked.profile.face
     for name in dict.fromkeys((face, "intrados", "axis")):
         low, high = asked.plane.placed(ring.feet(name))
-        yield Dimension("horizontal", low, high, ring.span(name), _SAYS[name], "below", 0)
+        yield Dimension("horizontal", low, high, ring.span(name), _SAYS[name], "below", 0, tells=name == face)
+    if asked.profile.foot == "level":
+        bed = np.stack([ring.feet("intrados")[1], ring.feet("extrados")[1]])
+        low, high = asked.plane.placed(bed)
+        yield Dimension("horizontal", low, high, beds(ring)[1], "bed", "below", 0)
     if ring.feet(face)[1, 1] != 0.0:
         rise = abs(asked.level)
         side: Side = "right" if asked.level > 0 else "left"
@@ -113,16 +143,22 @@ def _rise(asked: AskedArch, ring: Ring, name: LineName) -> Iterator[Dimension]:
         return
     line = ring.line(name)
     feet = ring.feet(name)
-    side: Side = "right" if name == "axis" else "left"
+    side: Side = "left" if name == "intrados" else "right"
     low = np.array([feet[1 if side == "right" else 0, 0], np.min(feet[:, 1])])
-    yield _measured(asked, "vertical", low, line.point(0.0), _RISES[name], side)
+    says = "over all" if name == "extrados" != asked.profile.face else _RISES[name]
+    yield replace(_measured(asked, "vertical", low, line.point(0.0), says, side), tells=name == asked.profile.face)
 
 
 def _thicknesses(asked: AskedArch, ring: Ring) -> Iterator[Dimension]:
-    """Along the normals, at the crown and where the intrados springs."""
-    places = (*([0.0] if ring.crown_inside else []), ring.ends["intrados"][1])
-    for q in places:
-        yield _measured(asked, "aligned", ring.intrados.point(q), ring.extrados.point(q), "", "inside")
+    """Along the normal: once, as it is the same all along; at the crown, or where the intrados springs."""
+    q = 0.0 if ring.crown_inside else ring.ends["intrados"][1]
+    yield _measured(asked, "aligned", ring.intrados.point(q), ring.extrados.point(q), "", "inside")
+
+
+def beds(ring: Ring) -> tuple[float, float]:
+    """Return the widths of level feet, from intrados to extrados, m."""
+    inner, outer = ring.feet("intrados")[:, 0], ring.feet("extrados")[:, 0]
+    return abs(float(inner[0] - outer[0])), abs(float(outer[1] - inner[1]))
 
 
 def _measured(asked: AskedArch, kind: DimensionKind, p: Floats, q: Floats, says: str, side: Side) -> Dimension:
@@ -132,8 +168,8 @@ def _measured(asked: AskedArch, kind: DimensionKind, p: Floats, q: Floats, says:
     return Dimension(kind, start, end, value, says, side)
 
 
-def _ordinates(asked: AskedArch, made: Made) -> list[tuple[Floats, Floats]]:
-    """Feet on the springing level and tops on the face line of the ordinates that are drawn, in place."""
+def _ordinates(asked: AskedArch, made: Made) -> list[tuple[float, Floats, Floats]]:
+    """Abscissae, feet on the springing level and tops on the face line of the ordinates that are drawn, in place."""
     if made.table is None or len(made.table.x) > MOST_ORDINATES:
         return []
     heights = getattr(made.table, asked.profile.face)
@@ -141,4 +177,4 @@ def _ordinates(asked: AskedArch, made: Made) -> list[tuple[Floats, Floats]]:
     x, base = made.table.x[shown], datum(made.ring)
     feet = asked.plane.placed(np.stack([x, np.full_like(x, base)], axis=-1))
     tops = asked.plane.placed(np.stack([x, base + heights[shown]], axis=-1))
-    return list(zip(feet, tops, strict=True))
+    return list(zip(x.tolist(), feet, tops, strict=True))

@@ -10,6 +10,7 @@ from numpy.typing import NDArray
 
 from geom.hang.figures import HangingFigures
 from geom.hang.shape import Shape, dimensions, drawn
+from geom.hang.shown import with_bays
 from geom.hang.together import one_solid, worst
 from geom.hang.unfolded import unfolded_shape, unfolded_solid
 from geom.result import (
@@ -68,7 +69,7 @@ def gathered(mark: str, bays: Sequence[Piece], wanted: Quantity | None, *, copie
         mark=mark,
         kind="run",
         what=f"run of {len(bays)} {'bay' if len(bays) == 1 else 'bays'}, {bays[0].what}",
-        views=(_elevation(bays),),
+        views=(with_bays(_elevation(bays), bays, _labels(mark, bays)),),
         mass=mass,
         figures=whole,
         used=bays[0].used,

@@ -43,7 +43,7 @@ def fill(asked: AskedNet, shape: NetShape, intended: Quantity, setting: Setting)
         intended=intended,
         cases=(_as_hung(figures, setting),),
         stocks=asked.stocks,
-        facts=_facts(figures, shape, parts, mass),
+        facts=_facts(figures, shape, parts, mass, _pulls(asked, shape)),
         lines=views.lines(asked, shape),
         labels=views.labels(asked, shape),
         solids=solids(asked, shape, parts, setting.drawing.within),
@@ -89,15 +89,19 @@ def _as_hung(figures: NetFigures, setting: Setting) -> Case:
     )
 
 
-def _facts(figures: NetFigures, shape: NetShape, parts: Made, mass: float) -> tuple[Quantity, ...]:
-    """Return what a shop needs under the elevation."""
+def _facts(
+    figures: NetFigures, shape: NetShape, parts: Made, mass: float, pulls: tuple[Pull, ...]
+) -> tuple[Quantity, ...]:
+    """Return what a shop needs under the elevation; a fixing bears the vector sum of all members at it."""
     links = int(parts.count.sum())
+    on_anchors = [float(np.linalg.norm(vector)) for pull in pulls for vector in pull.vectors.values()]
     return (
         Quantity("members", float(len(shape.length))),
         Quantity("links", float(links)) if links else Quantity("cut length", float(parts.cut.sum()), _METRES),
         Quantity("depth", figures.depth, _METRES),
         Quantity("mass", mass, Unit("kg")),
-        Quantity("greatest end pull", float(shape.force.max()), _NEWTONS),
+        Quantity("greatest end pull of a member", float(shape.force.max()), _NEWTONS),
+        Quantity("greatest pull on an anchor (vector sum)", max(on_anchors), _NEWTONS),
     )
 
 

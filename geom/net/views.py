@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from typing import Literal
 
 import numpy as np
@@ -13,6 +14,7 @@ from geom.net.network import Floats
 from geom.net.shape import NetShape
 from geom.result import Z_UP, Dimension, Frame, Label, Line, View, fixed
 
+_MOST_LEVELS = 6  # of supports, said in an elevation: more are in the table
 _LEVEL = 1e-9  # of a side's length: how far its ends may be apart across x or y for it to run along them
 
 
@@ -61,7 +63,7 @@ def views(asked: AskedNet, shape: NetShape) -> tuple[View, ...]:
             View(
                 f"elevation along side {side + 1}",
                 Frame(fixed(corners[side]), _way(corners[side], corners[side + 1]), Z_UP),
-                (*_levels(asked, shape, corners[side], corners[side + 1]), *depth),
+                (*_levels(asked, shape, corners[side], corners[side + 1]), *depth, *_held(marks, corners, side)),
                 labels=marks,
             )
             for side, depth in ((0, _depth(asked, shape)), (1, ()))
@@ -94,6 +96,20 @@ def _levels(asked: AskedNet, shape: NetShape, first: Floats, second: Floats) -> 
         Dimension("horizontal", first, second, width, "side on plan", "above"),
         Dimension("level", lowest, lowest, shape.lowest, "lowest point", "below"),
     )
+
+
+def _held(marks: tuple[Label, ...], corners: Floats, side: int) -> Iterator[Dimension]:
+    """Return the levels of the supports, each once, where it is seen furthest to the right."""
+    along = _way(corners[side], corners[side + 1])
+    heights = np.array([mark.at[2] for mark in marks])
+    found = np.unique(np.round(heights, 6))
+    if len(found) > _MOST_LEVELS:
+        return
+    for level in found.tolist():
+        there = [mark for mark in marks if abs(mark.at[2] - level) < 1e-6]
+        at = max(there, key=lambda mark: float(mark.at @ along)).at
+        says = "all supports" if len(found) == 1 else "supports" if len(there) > 1 else "support"
+        yield Dimension("level", at, at, float(at[2]), says, "right")
 
 
 def _depth(asked: AskedNet, shape: NetShape) -> tuple[Dimension, ...]:
