@@ -20,6 +20,7 @@ from geom.hang.intent import Made, Wish
 from geom.hang.sensitivity import answers, sag_per_kelvin, sag_per_length
 from geom.hang.shape import Shape, dimensions, drawn, shape
 from geom.hang.shopwork import INTENDED, UNITS, cut, facts, mass, rounded_pins, used, wanted_of
+from geom.hang.shown import fittings, levels
 from geom.hang.states import AS_HUNG, State, states
 from geom.result import NAN, Z_UP, Floats, Frame, Label, Piece, Pull, Quantity, View, fixed
 from geom.setting.options import Setting
@@ -93,7 +94,8 @@ def _piece(member: Asked, number: int, solved: _Solved, setting: Setting) -> Pie
     form = shape(start, end, at)
     figures = _figures(member, at, form, number, solved, setting)
     made_mass = mass(member, figures, setting)
-    view = View("elevation", Frame(start, form.along, Z_UP), dimensions(form, figures))
+    sizes = (*dimensions(form, figures), *levels(member.start, member.end))
+    view = View("elevation", Frame(start, form.along, Z_UP), sizes)
     cases = tuple(state.of(number, float(start[2])) for state in solved.states)
     return Piece(
         mark=member.mark,
@@ -110,7 +112,7 @@ def _piece(member: Asked, number: int, solved: _Solved, setting: Setting) -> Pie
         cases=cases,
         facts=facts(member, figures, made_mass, setting),
         lines=(*drawn(member.mark, form),),
-        labels=_labels(member),
+        labels=(*_labels(member), *fittings(member)),
         solids=solids(member, form, figures),
         cuts=(cut(member, figures, made_mass, setting),),
         pulls=_pulls(member, number, solved.states, form),
