@@ -146,10 +146,10 @@ def _reach_and_parts(part: Law, middle: Floats) -> tuple[Floats, Floats, tuple[F
     h2 = _dot(h, h) + least * least
     v1, v2 = c - q, c + q
     t1, t2 = np.sqrt(h2 + v1 * v1), np.sqrt(h2 + v2 * v2)
-    total = t1 + t2
+    total = np.maximum(t1 + t2, _TINY)  # not even a section of no length and no pull divides by nothing
     eps = 2.0 * q / total
-    slack = h2 / (t1 + np.abs(v1)) + h2 / (t2 + np.abs(v2))
-    less = np.where((v1 < 0.0) & (v2 > 0.0), slack, total - 2.0 * q) / total  # 1 - eps
+    slack = h2 / np.maximum(t1 + np.abs(v1), _TINY) + h2 / np.maximum(t2 + np.abs(v2), _TINY)
+    less = np.where((v1 <= 0.0) & (v2 >= 0.0), slack, total - 2.0 * q) / total  # 1 - eps
     alpha, p = _artanh_excess(eps, less), 2.0 * part.length / total
     r = (part.give + p)[..., np.newaxis] * middle + (p * alpha)[..., np.newaxis] * h
     return r, h, (c, q, v1, v2, t1, t2, p, alpha)

@@ -140,12 +140,14 @@ def _density(stock: Stock, phi: Floats) -> Extent:
 
 def _integrals(stock: Stock, phi0: Floats, turn: Floats) -> tuple[Floats, Floats]:
     """Give A and B."""
-    a, b = _closed(stock.spread, stock.steady, phi0, turn)
-    few = stock.steady < stock.spread
-    if few.any():
-        chosen = np.flatnonzero(few)
-        picked = (values.take(chosen) for values in (stock.spread, stock.steady, phi0, turn))
-        a[chosen], b[chosen] = _by_points(*picked)
+    values = stock.spread, stock.steady, phi0, turn
+    light = stock.steady < stock.spread
+    if not light.any():
+        return _closed(*values)
+    a, b = np.empty_like(phi0), np.empty_like(phi0)
+    for formula, where in ((_by_points, light), (_closed, ~light)):
+        chosen = np.flatnonzero(where)
+        a[chosen], b[chosen] = formula(*(value.take(chosen) for value in values))
     return a, b
 
 
