@@ -38,6 +38,7 @@ class Measure:
     rank: int
     text: str
     tells: bool = False
+    over: bool = False  # of a level inside the figure: whether it is said over its point rather than under it
 
     @property
     def extent(self) -> float:
@@ -89,6 +90,7 @@ def _measure(dimension: Dimension, frame: Frame, wording: Wording) -> Measure:
     return Measure(
         dimension.kind, p, q, dimension.value, dimension.says, side, dimension.rank,
         f"{text} {dimension.says}" if dimension.says else text, dimension.tells,
+        dimension.side == "above",
     )  # fmt: skip
 
 
@@ -150,13 +152,13 @@ def outside(found: Sequence[Measure], per: float, core: Box, sizes: Sizes) -> Ro
     return rows
 
 
-def _reach(box: Box, core: Box, side: str, sizes: Sizes) -> tuple[float, float]:
+def _reach(box: Box, core: Box, side: str, sizes: Sizes) -> tuple[float, float, float]:
     """From where to where texts may stand along a side: beside the rows under the figure, if these leave it free."""
     if side in ("below", "above"):
-        return core[0], core[2]
+        return core[0], core[2], 1.0
     clear = 0.5 * sizes.first_row  # strokes and extension lines reach past the figure, texts much further
     free = box[0] >= core[0] - clear if side == "left" else box[2] <= core[2] + clear
-    return (box[1] if free else core[1]), core[3]
+    return (box[1], core[3], 1.0) if free else (core[1], core[3], _UNDER)
 
 
 def _entry(measure: Measure, per: float) -> _Entry:
@@ -165,11 +167,11 @@ def _entry(measure: Measure, per: float) -> _Entry:
     return _Entry(measure, float(low[axis]), float(high[axis]), float(low[1 - axis]), float(high[1 - axis]))
 
 
-def _settle_text(entry: _Entry, lines: Floats, reach: tuple[float, float], sizes: Sizes) -> None:
+def _settle_text(entry: _Entry, lines: Floats, reach: tuple[float, float, float], sizes: Sizes) -> None:
     """Put a text over its line, smaller if need be, off the extension `lines` of what may stand further out.
 
     Where there is no room for it, it stands beyond the end where it is crossed by fewer, and reaches less far beyond
-    the figure, which is from `reach[0]` to `reach[1]`.
+    the figure, which is from `reach[0]` to `reach[1]`; beyond the lower end so much worse as `reach[2]` says.
     """
     for height in (sizes.note, sizes.small):
         entry.height = height
@@ -178,13 +180,14 @@ def _settle_text(entry: _Entry, lines: Floats, reach: tuple[float, float], sizes
             entry.shift = shift
             return
     entry.height = sizes.note
+    under = reach[2]
     beyond = entry.wide + 3 * sizes.gap
     ends = ((1, entry.high, entry.high + beyond), (-1, entry.low - beyond, entry.low))
     entry.outside = min(
         ends,
         key=lambda end: (
             int(((lines > end[1] + _SAME) & (lines < end[2] - _SAME)).sum()),
-            max(0.0, end[2] - reach[1], (reach[0] - end[1]) * _UNDER),
+            max(0.0, end[2] - reach[1], (reach[0] - end[1]) * under),
         ),
     )[0]
 
@@ -206,7 +209,7 @@ def _room(entry: _Entry, sizes: Sizes) -> tuple[float, float]:
     return entry.low - (beyond if entry.outside < 0 else 0.0), entry.high + (beyond if entry.outside > 0 else 0.0)
 
 
-def _into_rows(entries: list[_Entry], reach: tuple[float, float], sizes: Sizes) -> None:
+def _into_rows(entries: list[_Entry], reach: tuple[float, float, float], sizes: Sizes) -> None:
     """Settle the rows: by rank, then smallest nearest; what would overlap another stands further out than that."""
     entries.sort(key=lambda entry: entry.size)
     taken: list[tuple[float, float, _Entry]] = []

@@ -200,7 +200,7 @@ def _with_text(
 def _level(measure: Measure, at: Floats, ground: Ground, sizes: Sizes) -> Placed | None:
     """A level said near its point: a leader to a line with the level's sign, its text over it."""
     wide = Text(_LOOK, measure.text, (0, 0), sizes.note).width + 4 * sizes.gap
-    for drop in _DROPS:
+    for drop in sorted(_DROPS, key=lambda one: one > 0) if measure.over else _DROPS:
         for lean in _LEANS:
             foot = at + np.array([lean, -drop]) * sizes.note
             for before in _BEFORE:

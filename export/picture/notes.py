@@ -71,10 +71,11 @@ def _temperatures(result: Result) -> Iterator[str]:
         (case.case, case.temperature) for piece in result.pieces for case in piece.cases or () if case.case in _BY_HEAT
     )
     said = [
-        f"{name} {temperature:g} °C" for name, temperature in temperatures if temperature != at or len(temperatures) > 1
+        f"{name} {temperature:g} °C" for name, temperature in temperatures if any(one != at for _, one in temperatures)
     ]
     if said:
-        yield ", ".join(said).capitalize()
+        line = ", ".join(said)
+        yield f"{line[0].upper()}{line[1:]}"
 
 
 _BY_HEAT = ("coldest", "as hung", "hottest")

@@ -110,6 +110,8 @@ def _dimensions(asked: AskedArch, made: Made) -> Iterator[Dimension]:
     for _, foot, top in _ordinates(asked, made):
         yield Dimension("vertical", foot, top, float(top[2] - foot[2]), "", "inside")
     yield from _step(asked, made)
+    for at in (asked.plane.start, *([asked.plane.end] if asked.level else [])):
+        yield Dimension("level", at, at, float(at[2]), "springing", "below")
 
 
 def _step(asked: AskedArch, made: Made) -> Iterator[Dimension]:
