@@ -155,7 +155,7 @@ def _support(mark: str, entries: Sequence[tuple[Piece, Pull]], cases: Mapping[st
     heights = [pull.height for _, pull in entries if pull.height is not None]
     height = heights[0] if heights else None
     by_case = tuple(
-        _case(case, standing, _sum(pull.vectors.get(case, pull.vectors[AS_HUNG]) for _, pull in entries), height)
+        _case(case, standing, _together(case, standing, [pull for _, pull in entries]), height)
         for case, standing in standings.items()
         if case == AS_HUNG or any(case in pull.vectors for _, pull in entries)
     )
@@ -176,6 +176,15 @@ def _cases(piece: Piece) -> Iterable[Case]:
     yield from piece.cases or ()
     for part in piece.parts:
         yield from part.cases or ()
+
+
+def _together(case: str, standing: Standing, pulls: Sequence[Pull]) -> Floats:
+    """Sum pulls in one case, as hung where a piece does not have it; of a misuse the worst of one member at a time."""
+    if standing != "misuse":
+        return _sum(pull.vectors.get(case, pull.vectors[AS_HUNG]) for pull in pulls)
+    hung = _sum(pull.vectors[AS_HUNG] for pull in pulls)
+    each = [hung + pull.vectors[case] - pull.vectors[AS_HUNG] for pull in pulls if case in pull.vectors]
+    return max(each, key=lambda vector: float(np.linalg.norm(vector)))
 
 
 def _sum(vectors: Iterable[Floats]) -> Floats:

@@ -4,8 +4,6 @@ from __future__ import annotations
 
 from tests.bad_designs import HANGING_HEADER, Bad
 
-# ruff: noqa: E501 - a table, to be read by its columns
-
 WIRE = """\
 title = "Bad"
 unit  = "mm"
@@ -64,4 +62,109 @@ BAD_SITES = [
     Bad("support_give a mass", WIRE, GIVE, 'support_give = "2 kg"', "support_give", "mass"),
 ]
 
-BAD = [*BAD_FACTS, *BAD_SITES]
+LOADED = """\
+title = "Bad"
+unit  = "mm"
+
+[site]
+wind = "500 Pa"
+
+[[hanging]]
+mark = "W"
+from = [0, 0, 3000]
+to = [4000, 3000, 2800]
+stock = "DIN 763-6"
+sag = 300
+loads = [{ mark = "A", at = 1500, mass = "3 kg", hanger = 600, area = "0.06 m2", drag = 1.2 }, { at_plan = 3000, force = "20 N" }]
+spread = "120 N/m"
+check_load = "100 kg"
+"""
+
+RUN = """\
+title = "Bad"
+unit  = "mm"
+
+[[run]]
+mark = "R"
+supports = [[0, 0, 3000], [4000, 0, 3000], [8000, 0, 3000]]
+stock = "DIN 763-6"
+sag = 300
+loads = [{ at_plan = 1500, mass = "3 kg" }]
+spread = "20 N/m"
+check_load = "100 kg"
+bays = [{ bay = 2, loads = [{ at = 900, force = "5 N" }], spread = "30 N/m", check_load = "80 kg" }]
+"""
+
+BAD_LOADS = [
+    Bad(
+        "loads a mass",
+        LOADED,
+        'loads = [{ mark = "A", at = 1500, mass = "3 kg", hanger = 600, area = "0.06 m2", drag = 1.2 }, { at_plan = 3000, force = "20 N" }]',
+        'loads = "3 kg"',
+        "loads",
+        "list",
+    ),
+    Bad(
+        "load nowhere",
+        LOADED,
+        '{ at_plan = 3000, force = "20 N" }',
+        '{ force = "20 N" }',
+        "loads",
+        "is missing; give one of at, at_plan",
+        "loads",
+    ),
+    Bad("load at two places", LOADED, "at = 1500,", "at = 1500, at_plan = 1500,", "loads", "one"),
+    Bad("load of no weight", LOADED, ', mass = "3 kg"', "", "loads", "is missing; give one of mass, force"),
+    Bad("load of two weights", LOADED, 'mass = "3 kg"', 'mass = "3 kg", force = "3 N"', "loads", "one"),
+    Bad("load at a mass", LOADED, "at = 1500", 'at = "1500 kg"', "loads", "mass"),
+    Bad("load at its end", LOADED, "at = 1500", "at = 0", "loads", "more than 0"),
+    Bad("load beyond the member", LOADED, "at = 1500", "at = 5400", "loads", "is not between its supports"),
+    Bad(
+        "load on plan beyond the span",
+        LOADED,
+        "at_plan = 3000",
+        "at_plan = 5000",
+        "loads",
+        "is not between its supports",
+    ),
+    Bad("load of a negative mass", LOADED, 'mass = "3 kg"', 'mass = "-3 kg"', "loads", "0 or more"),
+    Bad("load of a mass in metres", LOADED, 'mass = "3 kg"', 'mass = "3 m"', "loads", "length"),
+    Bad("load of no force", LOADED, 'force = "20 N"', "force = 0", "loads", "more than 0"),
+    Bad("load of a force in kilograms", LOADED, 'force = "20 N"', 'force = "20 kg"', "loads", "mass"),
+    Bad("hanger upward", LOADED, "hanger = 600", "hanger = -600", "loads", "0 or more"),
+    Bad("area without a unit", LOADED, 'area = "0.06 m2"', "area = 0.06", "loads", "unit"),
+    Bad("area without its drag", LOADED, ", drag = 1.2", "", "loads", "is missing; give the drag coefficient", "loads"),
+    Bad("drag a length", LOADED, "drag = 1.2", 'drag = "1.2 m"', "loads", "length"),
+    Bad("load's mark a number", LOADED, 'mark = "A"', "mark = 1", "loads", "is no text"),
+    Bad("two loads of one mark", LOADED, 'mark = "A"', 'mark = "L2"', "loads", "the mark of two loads"),
+    Bad("load's key misspelt", LOADED, "hanger =", "hangar =", "loads", "hanger"),
+    Bad("spread of nothing", LOADED, 'spread = "120 N/m"', 'spread = "0 N/m"', "spread", "more than 0"),
+    Bad("spread without a unit", LOADED, 'spread = "120 N/m"', "spread = 120", "spread", "unit"),
+    Bad("spread a mass", LOADED, 'spread = "120 N/m"', 'spread = "12 kg"', "spread", "mass"),
+    Bad("check_load negative", LOADED, 'check_load = "100 kg"', 'check_load = "-100 kg"', "check_load", "0 or more"),
+    Bad("check_load a length", LOADED, 'check_load = "100 kg"', 'check_load = "2 m"', "check_load", "length"),
+    Bad("wind negative", LOADED, 'wind = "500 Pa"', 'wind = "-500 Pa"', "wind", "0 or more"),
+    Bad("wind a speed", LOADED, 'wind = "500 Pa"', 'wind = "20 m/s"', "wind", "20 m/s"),
+    Bad("wind without a unit", LOADED, 'wind = "500 Pa"', "wind = 500", "wind", "unit"),
+    Bad(
+        "loads on a plumb line",
+        LOADED,
+        'to = [4000, 3000, 2800]\nstock = "DIN 763-6"\nsag = 300',
+        'to = [0, 0, 2800]\nstock = "DIN 763-6"\nlength = 3000',
+        "loads",
+        "two strands on one plumb line",
+        "loads",
+    ),
+    Bad("run's load along a bay", RUN, "at_plan = 1500", "at = 1500", "loads", "give `at_plan` along the run"),
+    Bad("run's load beyond it", RUN, "at_plan = 1500", "at_plan = 8000", "loads", "at no place between two supports"),
+    Bad(
+        "run's load at a support", RUN, "at_plan = 1500", "at_plan = 4000", "loads", "at no place between two supports"
+    ),
+    Bad("run's spread a mass", RUN, 'spread = "20 N/m"', 'spread = "20 kg"', "spread", "mass"),
+    Bad("run's check_load a length", RUN, 'check_load = "100 kg"', 'check_load = "2 m"', "check_load", "length"),
+    Bad("bay's load beyond it", RUN, "at = 900", "at = 9000", "bays", "is not between its supports"),
+    Bad("bay's spread of nothing", RUN, 'spread = "30 N/m"', 'spread = "0 N/m"', "bays", "more than 0"),
+    Bad("bay's check_load of text", RUN, 'check_load = "80 kg"', 'check_load = "heavy"', "bays", "heavy"),
+]
+
+BAD = [*BAD_FACTS, *BAD_SITES, *BAD_LOADS]

@@ -9,6 +9,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from geom.hang.carried import Load, carried
 from geom.hang.intent import FactName, Wish
 from geom.setting.fittings import End
 from geom.setting.options import Setting
@@ -46,6 +47,9 @@ class Asked:
     ground: Ground | None = None
     through: tuple[float, float, float] | None = None
     branch: str = ""  # of `end_pull`: shallow or deep
+    loads: tuple[Load, ...] = ()
+    spread: float = 0.0  # N per metre on plan
+    person: float = 0.0  # weight of a person to be tried on it, N
 
     @property
     def takes(self) -> float:
@@ -108,6 +112,7 @@ def wishes(members: Sequence[Asked], setting: Setting) -> Wish:
         pitch=np.array(pitch, dtype=np.float64),
         parity=np.array([member.parity for member in members], dtype=np.str_),
         rounding=np.array([member.rounding for member in members], dtype=np.str_),
+        carried=carried([member.loads for member in members], [member.spread for member in members]),
     )
 
 

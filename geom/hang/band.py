@@ -3,19 +3,17 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 from numpy.typing import NDArray
 
 from geom.hang.asked import Asked
-from geom.hang.clearance import Grounds, least_over
 from geom.hang.figures import Band
-from geom.hang.intent import Lengths, Wish, hung
-from geom.setting.options import Setting
+from geom.hang.intent import Lengths
+from geom.hang.states import Looked, State, state
 
 Floats = NDArray[np.float64]
-Ints = NDArray[np.int64]
 
 
 @dataclass(frozen=True, eq=False)
@@ -41,26 +39,34 @@ class Bands:
         )  # fmt: skip
 
 
-def bands(
-    members: Sequence[Asked], wish: Wish, lengths: Lengths, count: Ints, ground: Grounds, *, setting: Setting
-) -> Bands:
+def bands(members: Sequence[Asked], look: Looked) -> Bands:
     """Return the bands of all members: those a little shorter, and those a little longer with their supports given way.
 
     A chain is off by the tolerance of its pitch, all links erring one way; a rope by that of its cut. Near taut the sag
     answers out of proportion, so that both ends are solved for and not drawn from the slope.
     """
+    wish, made, setting = look.wish, look.made, look.setting
     tolerance, give = setting.shop.cut_tolerance, setting.site.support_give
-    of_pitch = [member.stock.pitch_band(int(n)) or (0.0, 0.0) for member, n in zip(members, count, strict=True)]
+    rows = zip(members, made.count.tolist(), strict=True)
+    of_pitch = [member.stock.pitch_band(count) or (0.0, 0.0) for member, count in rows]
     counted = np.isfinite(wish.pitch)[:, np.newaxis]
     off = np.where(counted, np.array(of_pitch).reshape(-1, 2), tolerance)
-    less = Lengths(lengths.pin - off[:, 0], lengths.excess - off[:, 0])
-    more = Lengths(lengths.pin + off[:, 1], lengths.excess + off[:, 1])
-    least, most = hung(wish, less), hung(wish, more, closer=np.full(wish.span.shape, give))
-    gaps = least_over(least, ground)[0], least_over(most, ground, moved=0.5 * give)[0]
+    if not (off.any() or give):
+        nothing = np.full(off.shape, np.nan)
+        return Bands(off, nothing, nothing, nothing, give)
+    least = _off(look, -off[:, 0], 0.0)
+    most = _off(look, off[:, 1], give)
     return Bands(
         off=off,
-        sag=np.stack([least.sag, most.sag], axis=1),
-        lowest=np.stack([least.lowest, most.lowest], axis=1),
-        clearance=np.stack(gaps, axis=1),
+        sag=np.stack([least.held.sag, most.held.sag], axis=1),
+        lowest=np.stack([least.held.lowest, most.held.lowest], axis=1),
+        clearance=np.stack([least.clearance, most.clearance], axis=1),
         closer=give,
     )
+
+
+def _off(look: Looked, longer: Floats, closer: float) -> State:
+    """Everything with other lengths, and with its supports nearer."""
+    own = look.made.lengths
+    made = replace(look.made, lengths=Lengths(own.pin + longer, own.excess + longer))
+    return state(replace(look, made=made), "band", look.setting.temperatures[1], grown=look.wish.growth, closer=closer)

@@ -21,7 +21,8 @@ def cautions(
     `wished` is the length that its fact asked for, m; `cases` what it does when it stretches, None where no stretch was
     looked at.
     """
-    weight = member.stock.weight * figures.pin_to_pin
+    weight = member.stock.weight * figures.pin_to_pin + sum(load.force for load in member.loads)
+    weight += member.spread * figures.span
     found = [
         Caution(
             "dead load only", member.mark,
@@ -38,11 +39,12 @@ def cautions(
         found.append(
             Caution(
                 "shallow sag", member.mark,
-                f"The horizontal pull is {figures.pull_horizontal / weight:.1f} times the weight of the member, "
+                f"The horizontal pull is {figures.pull_horizontal / weight:.1f} times {_what(member)}, "
                 "because the sag is shallow; a little less length makes it much greater.",
                 "H = w a, the catenary's own relation",
             )
         )  # fmt: skip
+    found += _indicative(member, cases or (), setting)
     if member.ground is not None and figures.clearance < member.ground.at_least:
         found.append(
             Caution(
@@ -68,6 +70,27 @@ def cautions(
     if out_of_reach := _out_of_reach(member, figures, wished, setting):
         found.append(out_of_reach)
     return tuple(found)
+
+
+def _what(member: Asked) -> str:
+    return (
+        "the weight of the member and all it carries" if member.loads or member.spread else "the weight of the member"
+    )
+
+
+def _indicative(member: Asked, cases: Sequence[Case], setting: Setting) -> list[Caution]:
+    """What is to be known of wind and of a person."""
+    found = []
+    if setting.site.wind:
+        text = "Wind is steady, level and square to the span: gusts, vortices, ice, shelter are left out. Indicative."
+        found += [Caution("wind", member.mark, text, _PRACTICE)] if any(one.case == "wind" for one in cases) else []
+        if member.stock.drag is None:
+            text = f"No wind acts on {member.stock.name}: it has no drag."
+            found.append(Caution("no drag", member.mark, text))
+    if any(one.standing == "misuse" for one in cases):
+        text = "A person's weight is static, of one person, on one member at a time: a fall or a swing pulls far more."
+        found.append(Caution("misuse", member.mark, text, _PRACTICE))
+    return found
 
 
 def _stiff(member: Asked, setting: Setting, *, stretches: bool) -> list[Caution]:

@@ -29,6 +29,17 @@ class LinksFigures:
 
 
 @dataclass(frozen=True)
+class LoadFigures:
+    """One load: the point of the member that carries it, and how far along the made member, from its `from` end."""
+
+    mark: str
+    at: MetresArray
+    mark_: Metres
+    underside: Metres
+    force: Newtons
+
+
+@dataclass(frozen=True)
 class SagPerSupport:
     """Change of the greatest sag for a small move of one support: outward along the span, and upward; m/m."""
 
@@ -79,7 +90,7 @@ class HangingFigures:
     slope_from: Degrees
     slope_to: Degrees
     links: LinksFigures | None
-    loads: tuple[object, ...]
+    loads: tuple[LoadFigures, ...]
     sag_per_length: float
     points: MetresArray
     capacity_used: float = NAN  # greatest end pull over the breaking load, only where the user certifies one

@@ -8,14 +8,20 @@ with the length that those links make.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
+from functools import cached_property
 from typing import Literal
 
 import numpy as np
 from numpy.typing import NDArray
 
 from geom.hang import elastic, elastic_facts, links
+from geom.hang.carried import Bare, Carried, hung_loaded
+from geom.hang.carried_facts import least_end_pull as loaded_least_end_pull
+from geom.hang.carried_facts import length_of
 from geom.hang.formulas import chord
+from geom.hang.held import Held, of_loaded, of_stretched
+from geom.hang.loaded import Loaded
 from geom.hang.stretched import Stretched
 
 Floats = NDArray[np.float64]
@@ -49,6 +55,7 @@ class Wish:
     takes : length of the fittings at both ends together, m
     pitch : m; NaN of rope and rod
     parity, rounding : as links.count reads them
+    carried : what they carry
     """
 
     span: Floats
@@ -66,6 +73,17 @@ class Wish:
     pitch: Floats
     parity: NDArray[np.str_]
     rounding: NDArray[np.str_]
+    carried: Carried
+
+    @property
+    def bare(self) -> Bare:
+        """The members as the solver of loads takes them, as hung."""
+        return Bare(self.span, self.level_difference, self.weight, self.stiffness, self.growth)
+
+    @property
+    def rows(self) -> NDArray[np.intp]:
+        """Numbers of the members that carry something."""
+        return np.flatnonzero(self.carried.any)
 
     @property
     def chord(self) -> Floats:
@@ -85,8 +103,9 @@ class Lengths:
 class Made:
     """What can be made of n wishes. NaN in a curve's fields where there is none.
 
-    wished, made : as hung, of the fact as given, and of whole links (of rope and rod the wished one)
+    wished, made : as hung without loads, of the fact as given, and of whole links (of rope and rod the wished one)
     wished_lengths, lengths : what those are as made
+    rows, loaded : numbers of the members that carry something, and those as hung under it
     count : (n,) links, 0 where the stock has none
     least : (n,) the fewest links (of the parity asked for) that reach from support to support
     """
@@ -97,6 +116,15 @@ class Made:
     lengths: Lengths
     count: Ints
     least: Ints
+    loaded: Loaded
+
+    rows: NDArray[np.intp]
+
+    @cached_property
+    def held(self) -> Held:
+        """All members as hung, under what they carry."""
+        plain = of_stretched(self.made)
+        return plain.with_rows(self.rows, of_loaded(self.loaded)) if self.rows.size else plain
 
 
 def hung(wish: Wish, lengths: Lengths, *, growth: Floats | None = None, closer: Floats | float = 0.0) -> Stretched:
@@ -140,8 +168,9 @@ def made(wish: Wish) -> Made:
     count = np.zeros(wish.span.shape, dtype=np.int64)
     least = np.zeros(wish.span.shape, dtype=np.int64)
     can = chain & np.isfinite(wished.pin)
+    rows = wish.rows
     if not can.any():
-        return Made(as_wished, as_wished, wished, wished, count, least)
+        return Made(as_wished, as_wished, wished, wished, count, least, under(wish, rows, wished), rows)
     pitch, takes, parity = wish.pitch[can], wish.takes[can], wish.parity[can]
     least[can] = _least(wish.chord[can] / wish.growth[can] - takes, pitch, parity)
     wanted = links.count(wished.pin[can] - takes, pitch, rounding=wish.rounding[can], parity=parity)
@@ -153,7 +182,12 @@ def made(wish: Wish) -> Made:
     pin[can] = count[can] * pitch + takes
     excess[can] = pin[can] - wish.chord[can]
     lengths = Lengths(pin, excess)
-    return Made(as_wished, hung(wish, lengths), wished, lengths, count, least)
+    return Made(as_wished, hung(wish, lengths), wished, lengths, count, least, under(wish, rows, lengths), rows)
+
+
+def under(wish: Wish, rows: NDArray[np.intp], lengths: Lengths) -> Loaded:
+    """Return some members of given lengths as hung, under what they carry."""
+    return hung_loaded(wish.bare.of(rows), wish.carried.of(rows), lengths.pin[rows])
 
 
 def _wished_lengths(wish: Wish) -> Lengths:
@@ -177,10 +211,19 @@ def _by_length(fact: FactName, wish: Wish, chosen: Flags) -> Lengths:
 
 def _by_hang(fact: FactName, wish: Wish, chosen: Flags) -> Lengths:
     """Cool the hung member down to the shop's temperature and unload it."""
-    growth = wish.growth[chosen]
+    growth, carries = wish.growth[chosen], wish.carried.any[chosen]
     hang = _of_fact(fact, wish, chosen)
     pin = hang.length / growth
-    return Lengths(pin, hang.excess - (growth - 1.0) * pin)
+    excess = hang.excess - (growth - 1.0) * pin
+    if carries.any():
+        rows = np.flatnonzero(chosen)[carries]
+        length = length_of(
+            fact, wish.bare.of(rows), wish.carried.of(rows), wish.value[rows], place=wish.place[rows],
+            deep=wish.deep[rows],
+        )  # fmt: skip
+        pin[carries] = length / growth[carries]
+        excess[carries] = pin[carries] - wish.chord[rows]
+    return Lengths(pin, excess)
 
 
 def _of_fact(fact: FactName, wish: Wish, chosen: Flags) -> Stretched:
@@ -202,9 +245,13 @@ def _of_fact(fact: FactName, wish: Wish, chosen: Flags) -> Stretched:
     return elastic_facts.from_pull(*member)
 
 
-def least_end_pull(wish: Wish) -> Floats:
-    """Return the least pull that members can have on their upper support, N."""
-    return elastic_facts.least_end_pull(wish.span, wish.level_difference, wish.weight / wish.growth, wish.stiffness)
+def least_end_pull(wish: Wish, number: int) -> float:
+    """Return the least pull that a member can have on the support that bears more, N."""
+    row = np.array([number])
+    bare, carried = wish.bare.of(row), wish.carried.of(row)
+    if carried.any[0]:
+        return float(loaded_least_end_pull(bare, carried)[0])
+    return float(elastic_facts.least_end_pull(bare.span, bare.rise, bare.weight / bare.growth, bare.stiffness)[0])
 
 
 def _least(reach: Floats, pitch: Floats, parity: NDArray[np.str_]) -> Ints:
@@ -215,43 +262,53 @@ def _least(reach: Floats, pitch: Floats, parity: NDArray[np.str_]) -> Ints:
     return least + more
 
 
-def neighbours(wish: Wish, count: Ints) -> tuple[Ints, Stretched]:
-    """Return the two counts on each side of each count, (n, 4), and their curves (NaN where they cannot reach)."""
+def neighbours(wish: Wish, count: Ints) -> tuple[Ints, Floats, Floats, Floats]:
+    """Return the two counts on each side of each count, (n, 4), with sag, lowest point over `from` and pull of each.
+
+    NaN where they cannot reach.
+    """
     beside = links.neighbours(count)
     length = beside * wish.pitch[:, None] + wish.takes[:, None]
     reaches = (beside > 0) & (length * wish.growth[:, None] > wish.chord[:, None])
-    return beside, hung(wish, of_pins(wish, np.where(reaches, length, np.nan)))
+    pins = np.where(reaches, length, np.nan)
+    hang = hung(wish, of_pins(wish, pins))
+    sag, lowest, pull = (np.array(values) for values in (hang.sag, hang.lowest, hang.horizontal))
+    rows = wish.rows
+    for place in range(pins.shape[1] if rows.size else 0):
+        part = under(wish, rows, of_pins(wish, pins[:, place]))
+        sag[rows, place], lowest[rows, place], pull[rows, place] = part.sag, part.lowest, part.horizontal
+    return beside, sag, lowest, pull
 
 
-def value_of(hang: Stretched, lengths: Lengths, wish: Wish) -> Floats:
+def value_of(made: Made, lengths: Lengths, wish: Wish) -> Floats:
     """Return, of solved curves, the value of the fact that each was asked for, in the terms of `Wish.value`."""
+    held = made.held
+    values: dict[str, Floats] = {
+        "length": lengths.pin, "links": lengths.pin, "sag": held.sag, "sag_mid": held.sag_mid,
+        "lowest": np.minimum(0.0, wish.level_difference) - held.lowest, "pull": held.horizontal,
+        "end_pull": held.end_pull, "slope_from": held.slope_from, "slope_to": held.slope_to,
+    }  # fmt: skip
     found = np.full(wish.span.shape, np.nan)
-    for fact in FACTS:
+    for fact in np.unique(wish.fact):
         chosen = wish.fact == fact
-        if chosen.any():
-            found[chosen] = _value(fact, hang, lengths, wish)[chosen]
+        if fact == "slack":
+            found[chosen] = 1.0 + (lengths.excess / np.where(wish.chord > 0.0, wish.chord, np.nan))[chosen]
+        elif fact == "through":
+            found[chosen] = _at_place(made, wish)[chosen]
+        else:
+            found[chosen] = values[str(fact)][chosen]
     return found
 
 
-def _value(fact: FactName, hang: Stretched, lengths: Lengths, wish: Wish) -> Floats:
-    match fact:
-        case "slack":
-            return 1.0 + lengths.excess / np.where(wish.chord > 0.0, wish.chord, np.nan)
-        case "sag":
-            return hang.sag
-        case "sag_mid":
-            return hang.sag_mid
-        case "lowest":
-            return np.minimum(0.0, wish.level_difference) - hang.lowest
-        case "pull":
-            return hang.horizontal
-        case "end_pull":
-            return np.maximum(hang.pulls.at_from, hang.pulls.at_to)
-        case "through":
-            place = np.where(np.isnan(wish.place), 0.5 * wish.span, wish.place)[:, None]
-            return hang.at_arc(hang.arc_at(place)).elevation[:, 0]
-        case "slope_from":
-            return hang.slope_from
-        case "slope_to":
-            return hang.slope_to
-    return lengths.pin
+def of_lengths(wish: Wish, made: Made, lengths: Lengths) -> Made:
+    """Return the same members made of other lengths."""
+    return replace(made, made=hung(wish, lengths), lengths=lengths, loaded=under(wish, made.rows, lengths))
+
+
+def _at_place(made: Made, wish: Wish) -> Floats:
+    """Elevations over `from` at the places of points to be passed."""
+    place = np.where(np.isnan(wish.place), 0.5 * wish.span, wish.place)[:, None]
+    rise = np.array(made.made.at_arc(made.made.arc_at(place)).elevation[:, 0])
+    if made.rows.size:
+        rise[made.rows] = made.loaded.at_plan(place[made.rows])[:, 0, 2]
+    return rise

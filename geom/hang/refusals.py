@@ -13,7 +13,7 @@ from geom.fields import MOST_LENGTH
 from geom.hang.asked import Asked
 from geom.hang.intent import BY_LENGTH, FactName, Made, Wish, least_end_pull
 from geom.hang.stretched import Stretched
-from geom.registry import Refusal, refuse
+from geom.registry import Fault, Refusal, refuse
 from geom.setting.options import Setting
 
 MOST_LINKS = 1_000_000
@@ -41,19 +41,25 @@ def refusals(members: Sequence[Asked], wish: Wish, made: Made, setting: Setting)
     Only members without a curve, or with one that no shop could make, are looked at one by one.
     """
     chord = np.hypot(wish.span, wish.level_difference)
-    taut = ~(_hangs(made.made, wish) & _hangs(made.wished, wish))
+    hangs = _hangs(made.made, wish) & _hangs(made.wished, wish)
+    hangs[made.rows] = _hangs_loaded(made, wish)
+    taut = ~hangs
     many = made.count > MOST_LINKS
     bare = np.array([member.stock.counted for member in members]) & (made.count < 1)
     odd = np.array([member.fact == "links" and not _has_parity(int(member.value), member.parity) for member in members])
     no_links = np.array([member.fact == "links" and not member.stock.counted for member in members])
-    cut = made.made.length - wish.takes + np.array([member.grips for member in members])
+    cut = made.lengths.pin - wish.takes + np.array([member.grips for member in members])
     nothing = ~np.isfinite(wish.pitch) & ~(cut >= setting.shop.step)
-    nowhere = (chord < AT_ONE_POINT) | ~(made.wished.length <= MOST_LENGTH)
+    nowhere = (chord < AT_ONE_POINT) | ~(made.wished_lengths.pin <= MOST_LENGTH)
     missed = np.array([_misses(member) or (member.fact == "end_pull" and not member.branch) for member in members])
-    doubtful = taut | many | bare | odd | no_links | nothing | nowhere | missed
+    ends = np.where(wish.carried.on_plan, wish.span[:, np.newaxis], made.lengths.pin[:, np.newaxis])
+    outside = (wish.carried.at <= 0.0) | (wish.carried.at >= ends)
+    beyond = outside.any(axis=1) | (wish.carried.any & (wish.span < AT_ONE_POINT))
+    doubtful = beyond | taut | many | bare | odd | no_links | nothing | nowhere | missed
     found = {}
     for number in np.flatnonzero(doubtful).tolist():
-        curve = _Curve(float(chord[number]), float(made.wished.length[number]), int(made.least[number]), number, wish)
+        pin, least = float(made.wished_lengths.pin[number]), int(made.least[number])
+        curve = _Curve(float(chord[number]), pin, least, number, wish)
         found[number] = _reason(members[number], curve, setting)
     return found or _too_many(members, made)
 
@@ -64,6 +70,14 @@ def _hangs(hang: Stretched, wish: Wish) -> NDArray[np.bool_]:
     slack = hang.excess > LEAST_SLACK * hang.chord
     curved = np.isfinite(hang.u) & (hang.u > 0.0)
     return np.asarray((curved & (slack | (pull <= wish.strength))) | (slack & (hang.span == 0.0)))
+
+
+def _hangs_loaded(made: Made, wish: Wish) -> NDArray[np.bool_]:
+    """Whether members that carry something have a curve; one of whole links is longer than its chord."""
+    rows = made.rows
+    slack = made.lengths.excess[rows] + (wish.growth[rows] - 1.0) * made.lengths.pin[rows] > 0.0
+    reached = slack | (made.held.end_pull[rows] <= wish.strength[rows])
+    return np.asarray(np.isfinite(made.loaded.horizontal) & reached)
 
 
 def _misses(member: Asked) -> bool:
@@ -100,7 +114,7 @@ class _Curve:
     @property
     def least_end_pull(self) -> float:
         """The least pull that it can have on its upper support, N."""
-        return float(least_end_pull(self.wish)[self.number])
+        return least_end_pull(self.wish, self.number)
 
     @property
     def taut(self) -> bool:
@@ -124,6 +138,7 @@ def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal
     if member.start.at[:2] == member.end.at[:2] and fact not in (*BY_LENGTH, "lowest"):
         text = "has no meaning between supports on one plumb line, where the pull is 0"
         yield refuse(fact, f"{text}; give length, links, slack or lowest")
+    yield from _loads(member, curve, setting)
     if fact == "links":
         yield _links(member, chord, curve.least, setting)
     if fact == "length" and not value > chord:
@@ -150,6 +165,20 @@ def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal
         yield refuse(fact, f"{text}; give {more}, or a finer `step` in [shop]")
     text = f"leaves the member too taut over {say(chord)} to be made"
     yield refuse(fact, f"{text}; give {more}")
+
+
+def _loads(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal]:
+    """Reasons of what it carries: places beyond its ends, or no span to carry over."""
+    span = math.dist(member.start.at[:2], member.end.at[:2])
+    if (member.loads or member.spread) and span < AT_ONE_POINT:
+        key = "loads" if member.loads else "spread"
+        yield refuse(key, "hangs on two strands on one plumb line, which are not solved under loads; leave it out")
+    for number, load in enumerate(member.loads):
+        end = span if load.on_plan else curve.length if curve.length <= MOST_LENGTH else curve.chord
+        if load.at >= end or load.at <= 0.0:
+            key = "at_plan" if load.on_plan else "at"
+            text = f"{setting.stated(load.at)} is not between its supports; give more than 0 and less than"
+            yield Refusal((Fault(("loads", number, key), f"{text} {setting.stated(end)}"),))
 
 
 def _as_hung(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal]:

@@ -4,13 +4,16 @@ from __future__ import annotations
 
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, replace
+from itertools import pairwise
 from typing import Any, Literal
 
 import numpy as np
 from numpy.typing import NDArray
 
-from geom.curves import Catenary, Curve, ElasticCatenary, Joined, Polyline, Segment, hanging_strands
+from geom.curves import Catenary, Curve, ElasticCatenary, Joined, Polyline, Sampled, Segment, hanging_strands
 from geom.hang.figures import HangingFigures
+from geom.hang.held import Place
+from geom.hang.loaded import Loaded
 from geom.result import Dimension, Line, fixed
 
 Floats = NDArray[np.float64]
@@ -52,6 +55,9 @@ def _mapped(curve: Curve, flat: Callable[[Floats], Floats]) -> Curve:
             return Joined(tuple(_mapped(part, flat) for part in curve.curves))
         case Polyline():
             return replace(curve, vertices=flat(curve.vertices))
+        case Sampled():
+            nodes = flat(curve.nodes)
+            return Sampled(nodes, flat(curve.nodes + curve.tangents) - nodes)
     raise TypeError(f"a {type(curve).__name__} is no curve that a member hangs in")
 
 
@@ -74,6 +80,64 @@ def shape(start: Floats, end: Floats, at: Mapping[str, Any]) -> Shape:
     return Shape(start, end, ElasticCatenary(start, end, parameter, float(at["own_length"]), soft))
 
 
+def loaded_shape(start: Floats, end: Floats, hang: Loaded, row: int) -> Shape:
+    """Return one member under loads in place: an elastic catenary from load to load, all joined.
+
+    Parameters
+    ----------
+    start, end : ndarray, shape (3,)
+        Its ends, m.
+    hang : Loaded
+        Solved members, in no wind.
+    row : int
+        Which of them.
+    """
+    plain = Shape(start, end, Segment(start, end))
+    place = Place(start, plain.along)
+    nodes = place.points(hang.course.nodes[row])
+    nodes[-1] = end
+    own = hang.sections
+    real = np.flatnonzero(own.length[row] > _LEAST * hang.length[row]).tolist()
+    corners = [nodes[0], *(nodes[k + 1] for k in real[:-1]), nodes[-1]]
+    parts = [_section(hang, row, k, ends, place) for k, ends in zip(real, pairwise(corners), strict=True)]
+    return Shape(start, end, Joined(parts))
+
+
+# Of the length: sections shorter than that, between two loads at one place, have no curve of their own.
+_LEAST = 1e-9
+_SAMPLES = 64  # of a section under a spread load: between them its curve is good to 1e-8 of its sag
+
+
+def _section(hang: Loaded, row: int, section: int, ends: tuple[Floats, Floats], place: Place) -> Curve:
+    p, q = ends
+    own, pull = hang.sections, float(hang.tension[row, 0])
+    length, weight = float(own.length[row, section]), -float(own.load[row, section, 2])
+    if hang.spread[row] > 0.0:
+        return _sampled(hang, row, section, ends, place)
+    soft = weight / float(own.stiffness[row, section])
+    if weight * length < _LEAST * pull:
+        return Segment(p, q)
+    if soft == 0.0:
+        return Catenary(p, q, pull / weight)
+    return ElasticCatenary(p, q, pull / weight, length, soft)
+
+
+def _sampled(hang: Loaded, row: int, section: int, ends: tuple[Floats, Floats], place: Place) -> Curve:
+    """Sample a section under a spread load; its slope follows from H all along, and V from the load passed."""
+    own = hang.sections
+    first = float(own.length[row, :section].sum())
+    arcs = first + np.linspace(0.0, float(own.length[row, section]), _SAMPLES + 1)
+    local = hang.at_arc(np.broadcast_to(arcs, (len(hang.span), arcs.size)))[row]
+    local[0], local[-1] = hang.course.nodes[row, section], hang.course.nodes[row, section + 1]
+    weight = -float(own.load[row, section, 2])
+    passed = weight * (arcs - first) + float(hang.spread[row]) * (local[:, 0] - local[0, 0])
+    up = float(hang.course.before[row, section, 2]) + passed
+    tangents = np.stack([np.full_like(up, hang.tension[row, 0]), np.zeros_like(up), up], axis=1)
+    points = place.points(local)
+    points[0], points[-1] = ends
+    return Sampled(points, place.turned(tangents))
+
+
 def drawn(mark: str, shape: Shape) -> tuple[Line, Line]:
     """Return the lines of a member in place: its axis and its chord."""
     return Line("axis", shape.curve, mark), Line("chord", Segment(shape.start, shape.end), mark)
@@ -94,9 +158,22 @@ def dimensions(shape: Shape, figures: HangingFigures) -> tuple[Dimension, ...]:
         rise = abs(figures.level_difference)
         side: Literal["left", "right"] = "right" if figures.level_difference > 0 else "left"
         found.append(Dimension("vertical", shape.start, shape.end, rise, "level difference", side))
-    if 0.0 < figures.lowest_at < figures.span:
+    if 0.0 < figures.lowest_at < figures.span and not figures.loads:
         found.append(Dimension("horizontal", shape.start, lowest, figures.lowest_at, "to lowest point", "below", 0))
-    return tuple(found)
+    return (*found, *_to_loads(shape, figures))
+
+
+def _to_loads(shape: Shape, figures: HangingFigures) -> list[Dimension]:
+    """Plan distances from load to load, with the marks along the member that its clamps are set at."""
+    places = sorted((load.at for load in figures.loads), key=lambda at: float((at - shape.start) @ shape.along))
+    stops = [shape.start, *places, shape.end]
+    if not places:
+        return []
+    return [
+        Dimension("horizontal", p, q, float((q - p) @ shape.along), "", "below", 0)
+        for p, q in pairwise(stops)
+        if float((q - p) @ shape.along) > 0.0
+    ]
 
 
 def _chord_rise(figures: HangingFigures) -> float:

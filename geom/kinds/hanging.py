@@ -9,20 +9,34 @@ from typing import Annotated, ClassVar
 from pydantic import BeforeValidator, Field
 
 from geom import units
-from geom.fields import Count, Elevation, Feature, Limits, PointField, PositiveForce, Ratio, Size, choice
+from geom.fields import (
+    Count,
+    Elevation,
+    Feature,
+    ForcePerLength,
+    Limits,
+    Mass,
+    PointField,
+    PositiveForce,
+    Ratio,
+    Size,
+    choice,
+)
 from geom.hang import intent
 from geom.hang.asked import Asked, Ground, wishes
+from geom.hang.carried import Load
 from geom.hang.filling import fill
 from geom.hang.intent import FACTS
 from geom.hang.refusals import refusals
-from geom.registry import Kind, Outcome, refuse
+from geom.registry import Fault, Kind, Outcome, Refusal
 from geom.setting.fittings import Fittings
 from geom.setting.ground import Clear
+from geom.setting.loads import LoadEntry
 from geom.setting.options import Setting
 from geom.setting.stock import StockRef
 from geom.setting.supports import SupportRef
 
-LATER = frozenset({"loads", "spread", "floor", "check_load"})
+LATER = frozenset({"floor"})
 
 Slope = Annotated[float, BeforeValidator(lambda raw: _SLOPE.check(units.angle(raw), raw))]
 _SLOPE = Limits(above=-math.pi / 2, below=math.pi / 2, words="degrees under the horizontal, between -90 and 90")
@@ -67,6 +81,9 @@ class Hanging(Member):
     slope_from: Slope | None = Field(None, description="degrees under the horizontal at its `from` end")
     slope_to: Slope | None = Field(None, description="degrees under the horizontal at its `to` end")
     clear: Clear | None = Field(None, description="ground under it and the clearance wanted")
+    loads: tuple[LoadEntry, ...] = Field((), description="what hangs on it, [{ mark, at or at_plan, mass or force }]")
+    spread: ForcePerLength | None = Field(None, description="load spread over it, per metre on plan")
+    check_load: Mass | None = Field(None, description="a person's mass, tried at its worst places: misuse")
 
 
 def asked(member: Hanging) -> Asked:
@@ -87,10 +104,38 @@ def asked(member: Hanging) -> Asked:
         ground=Ground(member.clear.profile, member.clear.at_least) if member.clear else None,
         through=member.through,
         branch=member.branch or "",
+        loads=tuple(_load(number, load) for number, load in enumerate(member.loads)),
+        spread=member.spread or 0.0,
+        person=(member.check_load or 0.0) * units.STANDARD_GRAVITY,
     )
 
 
-_ASTRAY = refuse("branch", "goes with `end_pull` alone; leave it out")
+def _load(number: int, entry: LoadEntry) -> Load:
+    return Load(
+        mark=entry.mark or f"L{number + 1}",
+        at=float(entry.at if entry.at is not None else entry.at_plan or 0.0),
+        on_plan=entry.at is None,
+        force=entry.weight,
+        hanger=entry.hanger,
+        wind_area=(entry.area or 0.0) * (entry.drag or 0.0),
+    )
+
+
+def misfits(member: Hanging) -> tuple[Fault, ...]:
+    """Return what is wrong with keys that go together: a branch without its fact, an area without its drag."""
+    faults = [] if member.branch is None or member.end_pull is not None else [Fault(("branch",), _ASTRAY)]
+    marks: list[str] = []
+    for number, load in enumerate(member.loads):
+        name = (load.mark or f"L{number + 1}").casefold()
+        if name in marks:
+            faults.append(Fault(("loads", number, "mark"), f'"{load.mark or name}" is the mark of two loads'))
+        if load.area is not None and load.drag is None:
+            faults.append(Fault(("loads", number, "drag"), "is missing; give the drag coefficient of its `area`"))
+        marks.append(name)
+    return tuple(faults)
+
+
+_ASTRAY = "goes with `end_pull` alone; leave it out"
 
 
 def solve(hangings: Sequence[Hanging], setting: Setting) -> list[Outcome]:
@@ -100,8 +145,8 @@ def solve(hangings: Sequence[Hanging], setting: Setting) -> list[Outcome]:
     members = [asked(hanging) for hanging in hangings]
     wish = wishes(members, setting)
     made = intent.made(wish)
-    astray = [number for number, member in enumerate(members) if member.branch and member.fact != "end_pull"]
-    refused = dict.fromkeys(astray, _ASTRAY)
+    wrong = {number: misfits(hanging) for number, hanging in enumerate(hangings)}
+    refused = {number: Refusal(faults) for number, faults in wrong.items() if faults}
     refused |= refusals(members, wish, made, setting)
     pieces = fill(members, wish, made, skip=refused.keys(), setting=setting)
     return [refused.get(number) or pieces[number] for number in range(len(members))]

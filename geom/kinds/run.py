@@ -8,15 +8,16 @@ from typing import Annotated, Any, ClassVar
 import numpy as np
 from pydantic import BeforeValidator, Field, TypeAdapter, ValidationInfo
 
-from geom.fields import Copies, Count, Elevation, PositiveForce, Ratio, Section, Size, choice
+from geom.fields import Copies, Count, Elevation, ForcePerLength, Mass, PositiveForce, Ratio, Section, Size, choice
 from geom.hang.clearance import stretch
 from geom.hang.gathering import gathered
 from geom.hang.shopwork import wanted_of
 from geom.kinds.hanging import Hanging, Member
-from geom.registry import Layout, Outcome, Path, Refusal, refuse
+from geom.registry import Fault, Layout, Outcome, Path, Refusal, refuse
 from geom.result import Piece
 from geom.setting.fittings import EndField
 from geom.setting.ground import Clear
+from geom.setting.loads import LoadEntry
 from geom.setting.options import Setting
 from geom.setting.supports import Support, SupportRef
 
@@ -63,13 +64,16 @@ class Bay(Section):
     parity: Annotated[str | None, choice("any", "odd", "even")] = Field(None, description="count of links wanted")
     round: Annotated[str | None, choice("nearest", "up", "down")] = Field(None, description="how links are rounded")
     fittings: BayFittings | None = Field(None, description="fittings of this bay")
+    loads: tuple[LoadEntry, ...] = Field((), description="what hangs on this bay, measured from its `from` end")
+    spread: ForcePerLength | None = Field(None, description="load spread over this bay, per metre on plan")
+    check_load: Mass | None = Field(None, description="a person's mass, tried on this bay: misuse")
 
 
 class Run(Member):
     """The table [[run]]."""
 
     one_of: ClassVar[tuple[tuple[str, ...], ...]] = (FACTS,)
-    later: ClassVar[frozenset[str]] = frozenset({"counterweight", "friction", "check_load", "loads", "spread"})
+    later: ClassVar[frozenset[str]] = frozenset({"counterweight", "friction"})
 
     supports: tuple[SupportRef, ...] = Field(description="its supports in order, names or points")
     over: Annotated[str, choice("fixed")] = Field("fixed", description='"fixed": tied at every support')
@@ -80,6 +84,9 @@ class Run(Member):
     lowest: Annotated[Each | None, _each(Elevation)] = Field(None, description="elevation of the lowest points")
     pull: Annotated[Each | None, _each(PositiveForce)] = Field(None, description="horizontal pull")
     clear: Clear | None = Field(None, description="ground under it, measured along the run")
+    loads: tuple[LoadEntry, ...] = Field((), description="what hangs on it, `at_plan` measured along the run")
+    spread: ForcePerLength | None = Field(None, description="load spread over every bay, per metre on plan")
+    check_load: Mass | None = Field(None, description="a person's mass, tried on one bay at a time: misuse")
     bays: tuple[Bay, ...] = Field((), description="what differs in a bay, [{ bay = 2, ... }]")
 
     @property
@@ -101,6 +108,9 @@ def expand(run: Run, setting: Setting) -> list[Hanging] | Refusal:
         return wrong
     others = {bay.bay: bay for bay in run.bays}
     reach = plan_distances(run.supports)
+    astray = _astray(run, reach)
+    if astray:
+        return Refusal(astray)
     return [_bay(run, number, values[number % len(values)], others.get(number + 1), reach) for number in range(count)]
 
 
@@ -138,6 +148,8 @@ def _bay(run: Run, number: int, value: float, other: Bay | None, reach: np.ndarr
                 }
             )
     keys: dict[str, Any] = {fact: value}
+    own = other if other is not None else Bay.model_construct(bay=number + 1)
+    loads = (*_loads(run, float(reach[number]), float(reach[number + 1])), *own.loads)
     return Hanging.model_construct(
         mark=f"{run.mark}.{number + 1}",
         copies=run.copies,
@@ -147,9 +159,34 @@ def _bay(run: Run, number: int, value: float, other: Bay | None, reach: np.ndarr
         parity=parity,
         round=rounding,
         fittings=fits,
+        loads=loads,
+        spread=own.spread or run.spread,
+        check_load=own.check_load or run.check_load,
         clear=_ground(run, float(reach[number]), float(reach[number + 1])),
         **keys,
     )
+
+
+def _astray(run: Run, reach: np.ndarray) -> tuple[Fault, ...]:
+    """What is wrong with the places of a run's own loads."""
+    faults = []
+    for number, load in enumerate(run.loads):
+        if load.at_plan is None:
+            text = "is measured along one bay; give `at_plan` along the run, or the load in its bay of `bays`"
+            faults.append(Fault(("loads", number, "at"), text))
+        elif load.at_plan >= reach[-1] or np.any(np.equal(load.at_plan, reach)):
+            text = "is at no place between two supports of the run; give a distance along it on plan that is"
+            faults.append(Fault(("loads", number, "at_plan"), text))
+    return tuple(faults)
+
+
+def _loads(run: Run, start: float, end: float) -> list[LoadEntry]:
+    """Return the run's own loads in one bay, measured from its start, with the marks that they have in the run."""
+    return [
+        load.model_copy(update={"at_plan": load.at_plan - start, "mark": load.mark or f"L{number + 1}"})
+        for number, load in enumerate(run.loads)
+        if load.at_plan is not None and start < load.at_plan < end
+    ]
 
 
 def _ground(run: Run, start: float, end: float) -> Clear | None:

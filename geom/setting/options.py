@@ -9,7 +9,7 @@ from pydantic import BeforeValidator, Field, TypeAdapter, ValidationInfo
 
 from geom import units
 from geom.errors import say
-from geom.fields import Limits, PointField, Ratio, Reach, Section, Size, Temperature, Within, choice
+from geom.fields import Limits, PointField, Pressure, Ratio, Reach, Section, Size, Temperature, Within, choice
 
 
 class Shop(Section):
@@ -37,13 +37,12 @@ def _three(raw: Any, info: ValidationInfo) -> tuple[float, ...]:  # noqa: ANN401
 class Site(Section):
     """The table [site]. Its origin is taken off every point before anything is solved."""
 
-    later: ClassVar[frozenset[str]] = frozenset({"wind"})
-
     temperature: Annotated[tuple[float, ...] | None, BeforeValidator(_three)] = Field(
         None, description="coldest, as hung, hottest"
     )
     support_give: Reach = Field(0.0, description="how far supports may lean in, in all; half at each")
 
+    wind: Pressure = Field(0.0, description="pressure of a level wind, square to each span; indicative")
     origin: PointField = Field((0.0, 0.0, 0.0), description="site coordinates of the design's origin")
 
 
