@@ -33,7 +33,7 @@ LATER = frozenset(
 LATER_PATTERNS = ("diagonal", "triangle", "hexagon", "ring")
 WHOLE = ("corners", "edges")
 NONE = "none"
-_APART = 1e-7  # of the net: nodes nearer than that are drawn together, and the member between them has no length
+_LINE = 1e-7  # of the net: anchors no farther off a line on plan are in it
 MOST_LINKS = 1_000_000  # of all copies together: a design of more is refused
 DEEPEST = 20.0
 """Depth over the outline's longest side, past which force densities are too small for the weights to mean anything: a
@@ -128,8 +128,7 @@ def _solve(net: Net, setting: Setting) -> Outcome:
         return refuse(error.key, str(error))
     except SolveError as error:
         return refuse("force_density", f"{error}; give more")
-    refused = _drawn_together(asked, shape) or _too_deep(net, shape, setting) or _too_many(asked, shape)
-    return refused or _piece(net, asked, shape, setting)
+    return _too_deep(net, shape, setting) or _too_many(asked, shape) or _piece(net, asked, shape, setting)
 
 
 def _piece(net: Net, asked: AskedNet, shape: NetShape, setting: Setting) -> Outcome:
@@ -172,7 +171,7 @@ def _asked(net: Net, setting: Setting) -> AskedNet | Refusal:
         node_mass=net.node_mass,
         copies=net.copies,
     )
-    return _adrift(asked) or asked
+    return _adrift(asked) or _in_line(asked) or asked
 
 
 def _is_straight(net: Net, stock: Stock) -> bool:
@@ -222,14 +221,13 @@ def _adrift(asked: AskedNet) -> Refusal | None:
     return refuse("anchors", f"{text}; add an anchor there, or give members along the edges")
 
 
-def _drawn_together(asked: AskedNet, shape: NetShape) -> Refusal | None:
+def _in_line(asked: AskedNet) -> Refusal | None:
     """Force densities draw a net together over its anchors: over one to a point, over those on a line to that line."""
-    together = np.flatnonzero(shape.chord <= _APART * float(np.ptp(asked.pattern.nodes, axis=0).max()))
-    if not len(together):
+    plan = asked.pattern.nodes[asked.anchors, :2]
+    spread = np.linalg.svd(plan - plan.mean(axis=0), compute_uv=False)
+    if len(spread) > 1 and spread[1] > _LINE * float(np.ptp(asked.pattern.nodes[:, :2], axis=0).max()):
         return None
-    one, other = (asked.node_mark(int(node)) for node in asked.network.members[together[0]])
-    text = f"let nodes {one} and {other} be drawn together; give at least three, not in one line on plan"
-    return refuse("anchors", text)
+    return refuse("anchors", "let the whole net be drawn together; give at least three, not in one line on plan")
 
 
 def _too_deep(net: Net, shape: NetShape, setting: Setting) -> Refusal | None:
