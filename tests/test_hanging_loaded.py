@@ -300,3 +300,19 @@ def test_a_runs_own_loads_hang_in_their_bays_and_a_bays_beside_them() -> None:
     assert figures(second).loads[0].at == pytest.approx([4.0, 3.0, figures(second).loads[0].at[2]], abs=1e-9)
     alone = hung(4.0, 0.0, 'sag = 0.5\nloads = [{ at_plan = 1, force = "30 N" }]\nspread = "5 N/m"')
     assert figures(first).pull_horizontal == pytest.approx(figures(alone).pull_horizontal, rel=1e-9)
+
+
+def test_a_runs_loads_stand_in_its_unfolded_elevation_at_their_plan_distances() -> None:
+    body = (
+        '[[run]]\nmark = "R"\nsupports = [[0, 0, 5], [4, 0, 5], [4, 6, 5]]\nstock = "rope"\nsag = 0.5\n'
+        'loads = [{ mark = "A", at_plan = 1, force = "30 N", hanger = 0.4 }, { mark = "B", at_plan = 7, force = "9 N" }]\n'
+    )
+    (run,) = design(body).pieces
+    view = run.views[0]
+    shown = {label.text: label for label in view.labels or () if label.role == "load"}
+    assert {name: float(label.at[0]) for name, label in shown.items()} == pytest.approx({"A": 1.0, "B": 7.0}, abs=1e-9)
+    assert shown["A"].reach == 0.4
+    steps = {one.says: one.value for one in view.dimensions if one.says.startswith("to ")}
+    assert steps["to B"] == pytest.approx(3.0, abs=1e-9)
+    places = [label.at for label in run.labels if label.role == "load"]
+    assert places[1][:2] == pytest.approx([4.0, 3.0], abs=1e-9)

@@ -81,8 +81,9 @@ def gathered(mark: str, bays: Sequence[Piece], wanted: Quantity | None, *, copie
         parts_name="bays",
         facts=_facts(bays, whole, mass),
         lines=tuple(line for bay in bays for line in bay.lines),
-        labels=_labels(mark, bays),
+        labels=(*_labels(mark, bays), *(label for bay in bays for label in _loads(bay))),
         solids=one_solid(mark, bays),
+        tables=tuple(table for bay in bays for table in bay.tables),
         cuts=tuple(replace(cut, piece=mark) for bay in bays for cut in bay.cuts),
         pulls=_pulls(mark, bays),
         cautions=_cautions(mark, bays),
@@ -123,6 +124,10 @@ def _labels(mark: str, bays: Sequence[Piece]) -> tuple[Label, ...]:
     return tuple(Label(fixed(at), support, "support") for support, at in marks)
 
 
+def _loads(bay: Piece) -> list[Label]:
+    return [label for label in bay.labels if label.role == "load"]
+
+
 def _cautions(mark: str, bays: Sequence[Piece]) -> tuple[Caution, ...]:
     """Cautions that hold for every bay alike are said once, of the run; others name their bay."""
     found: dict[tuple[str, str], list[str]] = {}
@@ -151,6 +156,7 @@ def _elevation(bays: Sequence[Piece]) -> View:
         bay_dimensions += _bay_dimensions(shape, figures)
         marks += [Label(shape.start, bay.labels[0].text, "support")] if number == 0 else []
         marks.append(Label(shape.end, bay.labels[1].text, "support"))
+        marks += [replace(label, at=_beside(bay, shape, label.at)) for label in _loads(bay)]
         marks.append(Label(_middle(shape, figures), bay.mark, "part"))
         x += figures.span
     total = Dimension("horizontal", fixed(lines[0].curve.start), fixed(lines[-2].curve.end), x, "", "below", 2)
@@ -162,6 +168,12 @@ def _elevation(bays: Sequence[Piece]) -> View:
 def _bay_dimensions(shape: Shape, figures: HangingFigures) -> list[Dimension]:
     """The span of a bay, its sag, its lowest level, its level difference; a run repeats no more."""
     return [d for d in dimensions(shape, figures) if d.says != "to lowest point"]
+
+
+def _beside(bay: Piece, shape: Shape, at: Floats) -> Floats:
+    """A point of a bay's plane where that is unfolded."""
+    x, up = bay.frame.flat(at)
+    return np.asarray(shape.start + np.array([x, 0.0, up]))
 
 
 def _middle(shape: Shape, figures: HangingFigures) -> Floats:

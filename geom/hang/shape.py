@@ -165,14 +165,20 @@ def dimensions(shape: Shape, figures: HangingFigures) -> tuple[Dimension, ...]:
 
 def _to_loads(shape: Shape, figures: HangingFigures) -> list[Dimension]:
     """Plan distances from load to load, with the marks along the member that its clamps are set at."""
-    places = sorted((load.at for load in figures.loads), key=lambda at: float((at - shape.start) @ shape.along))
-    stops = [shape.start, *places, shape.end]
-    if not places:
+    if not figures.loads:
         return []
+    # plan distances, not places: the shape may be an unfolded one
+    reach = [(float(np.hypot(*(load.at - figures.points[0])[:2])), load) for load in figures.loads]
+    reach.sort(key=lambda one: one[0])
+    places = [(shape.start + shape.along * x) * [1, 1, 0] + [0, 0, load.at[2]] for x, load in reach]
+    stops = [0.0, *(x for x, _ in reach), figures.span]
+    names = [*(f"to {load.mark}" for _, load in reach), "to the end"]
     return [
-        Dimension("horizontal", p, q, float((q - p) @ shape.along), "", "below", 0)
-        for p, q in pairwise(stops)
-        if float((q - p) @ shape.along) > 0.0
+        Dimension("horizontal", p, q, there - here, says, "below", 0)
+        for (p, q), (here, there), says in zip(
+            pairwise([shape.start, *places, shape.end]), pairwise(stops), names, strict=True
+        )
+        if there > here
     ]
 
 

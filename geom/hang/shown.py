@@ -53,7 +53,8 @@ def with_bays(view: View, bays: Sequence[Piece], supports: Sequence[Label]) -> V
         held = [label if label.text in named else replace(label, text="") for label in held]
     middles = [label for label in view.labels or () if label.role == "part"]
     shown = (replace(label, role="bay", below=tuple(bay_facts(bay))) for label, bay in zip(middles, bays, strict=True))
-    return replace(view, labels=(*held, *shown), dimensions=(*_sizes(view.dimensions, bays), *levels_))
+    loads = [label for label in view.labels or () if label.role == "load"]
+    return replace(view, labels=(*held, *loads, *shown), dimensions=(*_sizes(view.dimensions, bays), *levels_))
 
 
 def bay_facts(bay: Piece) -> Iterator[Said]:
