@@ -23,7 +23,7 @@ from export.picture.values import SITE_PLAN, Panel, Picture, Text, around, shift
 from export.picture.views import Drawing, tidy
 from export.picture.wording import Wording, force, significant
 from geom.result import Dimension, Frame, Quantity, Result, Unit, fixed
-from tests.designs import NET, RUN, SWAGS, by_hand, in_unit, many, solved
+from tests.designs import ARCH, NET, RUN, SWAGS, by_hand, in_unit, many, solved
 
 WITHIN = 0.0005
 DESIGNS = {
@@ -462,3 +462,149 @@ def test_a_links_outline_has_its_sizes() -> None:
 
 def test_the_box_round_nothing_is_empty() -> None:
     assert around() == (math.inf, math.inf, -math.inf, -math.inf)
+
+
+# What a fitter and a builder look for
+
+
+def panel_of(name: str, mark: str) -> Panel:
+    return next(panel for panel in drawn(name).panels if panel.name == mark)
+
+
+def said_in(panel: Panel) -> list[str]:
+    return [one.text for group in panel.groups for one in group.texts]
+
+
+def test_each_bay_of_a_run_says_its_links_and_what_its_fittings_take() -> None:
+    panel = panel_of("run", "Q")
+    texts_ = panel.groups[0].texts
+    (run,) = result_of("run").pieces
+    for bay in run.parts:
+        mark = next(one for one in texts_ if one.text == bay.mark)
+        column = [one for one in texts_ if abs(one.at[0] - mark.at[0]) < 1e-9 and one.at[1] <= mark.at[1]]
+        below = [one.text for one in sorted(column, key=lambda one: -one.at[1])]
+        links = bay.figures.links.count
+        assert below[:3] == [bay.mark, f"{links} links", "takes 32 / 32"]
+        assert below[3:5] == [f"sag {bay.figures.sag * 1000:.0f}", f"lowest {bay.figures.lowest * 1000:.0f}"]
+        ends = [pull.at[0] / panel.per for pull in bay.pulls]
+        assert ends[0] < min(one.box[0] for one in column) < max(one.box[2] for one in column) < ends[1]
+
+
+def test_a_run_over_supports_of_several_levels_says_each_level_once_and_which_supports_have_it() -> None:
+    said = [placed.text.text for placed in panel_of("run", "Q").dimensions if placed.kind == "ordinate"]
+    assert sorted(said)[1:] == ["780 support 5", "840 support 4", "900 supports 1 to 3"]
+    assert sorted(said)[0].endswith("lowest point")
+    named = RUN.replace("[0, 0, 900], [1800, 0, 900]", '[0, 0, 900], "post"') + "[support.post]\nat = [1800, 0, 900]\n"
+    level = named.replace("840", "900").replace("780", "900")
+    panel = next(one for one in picture(solved(level), Drawing(WITHIN)).panels if one.name == "Q")
+    assert "900 all supports" in [placed.text.text for placed in panel.dimensions]
+
+
+def test_the_chain_of_many_equal_bays_is_the_first_and_the_total() -> None:
+    supports = ", ".join(f"[{1800 * number}, 0, 900]" for number in range(31))
+    many_bays = f'unit = "mm"\n[[run]]\nmark = "Q"\nsupports = [{supports}]\nstock = "DIN 763-8"\nsag = 250\n'
+    shown = picture(solved(many_bays), Drawing(WITHIN))
+    panel = next(one for one in shown.panels if one.name == "Q")
+    spans = [placed.text.text for placed in panel.dimensions if placed.kind == "linear" and placed.angle == 0]
+    assert sorted(spans) == ["1800", "54000 30 equal bays"]
+    assert all(f"Q.{number}" in said_in(panel) for number in range(1, 31))
+
+
+def test_a_hanging_says_the_levels_of_its_supports_and_its_fittings() -> None:
+    fitted = (
+        'unit = "mm"\n[fitting.eye]\ntakes = 90\ngrip = 60\n[[hanging]]\nmark = "S"\nfrom = [0, 0, 2600]\n'
+        'to = [4000, 0, 2600]\nstock = "7x7-4"\nsag = 400\nfittings = { from = "eye", to = 45 }\n'
+    )
+    for high, levels in ((2600, ["2600 supports"]), (2900, ["2600", "2900"])):
+        text_ = fitted.replace("4000, 0, 2600", f"4000, 0, {high}")
+        panel = next(one for one in picture(solved(text_), Drawing(WITHIN)).panels if one.name == "S")
+        assert {"eye", "takes 90, grip 60", "fitting", "takes 45"} <= set(said_in(panel))
+        said = [placed.text.text for placed in panel.dimensions if placed.kind == "ordinate"]
+        assert sorted(one for one in said if not one.endswith("lowest point")) == levels
+
+
+@pytest.mark.parametrize("text_", [ARCH, RUN], ids=["arch", "run"])
+def test_the_plan_of_the_only_piece_stands_in_line_under_its_elevation_at_the_same_scale(text_: str) -> None:
+    result = solved(text_)
+    for panels in (picture(result, Drawing(WITHIN)).panels, screen(result).panels):
+        over, plan = (next(one for one in panels if one.name == name) for name in (result.pieces[0].mark, SITE_PLAN))
+        assert over.per == plan.per
+        ends = []
+        for panel in (over, plan):
+            points = np.concatenate([stroke.points for group in panel.groups for stroke in group.strokes])
+            ends.append(points[:, 0].min() / panel.per + panel.at[0])
+        assert ends[0] == pytest.approx(ends[1], abs=1e-6)
+        assert plan.at[1] + plan.box[3] < over.at[1] + over.box[1]
+
+
+def test_a_preview_shows_the_dimensions_that_were_asked_for() -> None:
+    said = {placed.text.text for panel in screen(solved(ARCH)).panels for placed in panel.dimensions}
+    asked = {placed.says for panel in screen(solved(ARCH)).panels for placed in panel.dimensions}
+    assert {"clear span", "clear rise"} <= asked
+    assert not {"span of axis", "over all"} & asked, said
+    run = {placed.text.text for panel in screen(solved(RUN)).panels for placed in panel.dimensions}
+    assert {"1800", "7200"} <= run
+
+
+def test_blocks_are_marked_in_themselves_or_outside_the_ring_alike_on_both_sides() -> None:
+    shown = picture(solved(ARCH), Drawing(WITHIN))
+    panel = next(one for one in shown.panels if one.name == "A1")
+    result = solved(ARCH)
+    marks = {one.text: one for group in panel.groups for one in group.texts}
+    labels_ = [label for label in result.pieces[0].labels if label.role == "block"]
+    frame = result.pieces[0].frame
+    within = []
+    for label in labels_:
+        at = frame.flat(label.at[None])[0] / panel.per
+        box = shapely.box(*marks[label.text].box)
+        within.append(bool(box.contains(shapely.Point(at))))
+    off = sum(one != other for one, other in zip(within, reversed(within), strict=True))
+    assert off <= 2, within
+    assert len(set(within)) == 1 or within.count(not within[0]) <= max(1, len(within) // 10)
+
+
+def test_circles_of_nodes_stand_on_a_leader_from_their_node_and_nearly_all_in_one_direction() -> None:
+    panel = next(one for one in drawn("net").panels if one.kind == "plan")
+    (group,) = panel.groups
+    leaders = [path.points for path in group.paths if path.look == looks.LOOKS["leader"]]
+    piece = result_of("net").pieces[0]
+    nodes = {label.text: label.at[:2] / panel.per for label in piece.labels if label.role == "node"}
+    rings = [circle for circle in group.circles if circle.radius > 1]
+    assert len(rings) == len(nodes)
+    ways = []
+    for circle in rings:
+        mark = next(
+            one
+            for one in group.texts
+            if one.text in nodes and np.hypot(*(np.mean(one.corners, axis=0) - circle.at)) < 0.1
+        )
+        node = nodes[mark.text]
+        ends = [points for points in leaders if np.hypot(*(points[0] - node)) < 1.0]
+        assert any(abs(np.hypot(*(points[1] - circle.at)) - circle.radius) < 0.1 for points in ends), mark.text
+        ways.append(tuple(np.sign(np.round(np.array(circle.at) - node, 6))))
+    assert max(ways.count(way) for way in ways) >= 0.7 * len(ways)
+
+
+def test_edges_of_a_net_are_drawn_no_thinner_than_its_field() -> None:
+    assert looks.LOOKS["edge"].width >= looks.LOOKS["member"].width
+
+
+def test_only_the_head_of_a_caution_is_warm_and_equal_cautions_of_all_pieces_are_one() -> None:
+    shown = drawn("swags")
+    warm = [one.text for one in shown.notes.texts if one.look.colour == "warm"]
+    assert all(one.startswith("CAUTION ") for one in warm)
+    assert len({" ".join(one.split()[2:]) for one in warm}) <= len(warm)
+    assert "all pieces: Pulls are of the dead load" in " ".join(one.text for one in shown.notes.texts)
+    alone = " ".join(one.text for one in drawn("run").notes.texts)
+    assert "all pieces" not in alone
+
+
+def test_on_a_drawing_in_feet_the_notes_have_no_metric_lengths() -> None:
+    assert Wording("ft").retold("up to 6.6 mm longer; 4.2 m between; 1900 kg/m3, 11 or more links") == (
+        f'up to 0.26" longer; {Wording("ft").length(4.2)} between; 1900 kg/m3, 11 or more links'
+    )
+    assert Wording("mm").retold("up to 6.6 mm longer") == "up to 6.6 mm longer"
+    assert Wording("ft").fine(0.0005) == '0.02"'  # 0.5 / 25.4 = 0.0197
+    assert Wording("mm").fine(0.0005) == "0.5 mm"
+    said = [one.text for one in drawn("swags in feet").notes.texts]
+    assert next(one for one in said if one.startswith("check line")).endswith("'-0\"")

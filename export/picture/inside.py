@@ -16,7 +16,7 @@ _SLIDES = (0.0, 0.15, -0.15, 0.3, -0.3)  # of the text's middle along the line, 
 _RINGS = (2.0, 3.5, 5.0, 7.0, 10.0, 14.0, 18.0)  # how far off a text with a leader is tried, in its heights
 _WAYS = 16
 _DROPS = (1.6, -1.6, 2.6, 4.0, -3.0, 5.5, 7.0, 9.0, 12.0)  # of a level's text under its point, in its heights
-_LEANS = (0.0, 1.0, -1.0, 2.5, -2.5, 5.0, -5.0, 8.0, -8.0, 12.0, -12.0)  # of its leader to the side, in the same
+_LEANS = ((0.0, 1.0, -1.0, 2.5, -2.5), (5.0, -5.0, 8.0, -8.0, 12.0, -12.0))  # of its leader to the side, in the same
 _BEFORE = (0.0, 1.0, 0.5, 0.25, 0.75)  # how much of its line is left of the leader
 _OFFSETS = (1.0, 1.8, 2.6, 3.4)  # of an aligned dimension outside the figure, in first rows
 
@@ -200,21 +200,26 @@ def _with_text(
 def _level(measure: Measure, at: Floats, ground: Ground, sizes: Sizes) -> Placed | None:
     """A level said near its point: a leader to a line with the level's sign, its text over it."""
     wide = Text(_LOOK, measure.text, (0, 0), sizes.note).width + 4 * sizes.gap
-    for drop in sorted(_DROPS, key=lambda one: one > 0) if measure.over else _DROPS:
-        for lean in _LEANS:
-            foot = at + np.array([lean, -drop]) * sizes.note
-            for before in _BEFORE:
-                left = float(foot[0]) - before * wide
-                box = (left, float(foot[1]), left + wide, float(foot[1]) + sizes.note + 0.6 * sizes.gap)
-                if ground.free(box, ANY, 0.35 * sizes.gap) and not ground.crosses(
-                    at + (foot - at) * 0.3, foot, HEAVY | TEXT
-                ):
-                    ground.area(corners_of(box), TEXT)
-                    # a leader from above ends over the text, not across it
-                    end = xy(foot[0], box[3]) if drop > 0 and 0 < before < 1 else foot
-                    ground.lines(np.stack([at, end]), LIGHT)
-                    return _level_drawn(measure, (at, end), corners_of(box)[:2], sizes)
+    for foot, before, over in _level_places(at, sizes, over=measure.over):
+        left = float(foot[0]) - before * wide
+        box = (left, float(foot[1]), left + wide, float(foot[1]) + sizes.note + 0.6 * sizes.gap)
+        if ground.free(box, ANY, 0.35 * sizes.gap) and not ground.crosses(at + (foot - at) * 0.3, foot, HEAVY | TEXT):
+            ground.area(corners_of(box), TEXT)
+            # a leader from above ends over the text, not across it
+            end = foot if over or not 0 < before < 1 else xy(foot[0], box[3])
+            ground.lines(np.stack([at, end]), LIGHT)
+            return _level_drawn(measure, (at, end), corners_of(box)[:2], sizes)
     return None
+
+
+def _level_places(at: Floats, sizes: Sizes, *, over: bool) -> Iterator[tuple[Floats, float, bool]]:
+    """Where a level's line may meet its leader, how much of it lies before that, and whether it is over its point."""
+    drops = sorted(_DROPS, key=lambda drop: drop > 0) if over else _DROPS
+    for leans in _LEANS:  # near its point first, whatever the height
+        for drop in drops:
+            for lean in leans:
+                for before in _BEFORE:
+                    yield at + np.array([lean, -drop]) * sizes.note, before, drop < 0
 
 
 def _level_drawn(measure: Measure, leader: tuple[Floats, Floats], line: Floats, sizes: Sizes) -> Placed:
