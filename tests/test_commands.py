@@ -94,6 +94,25 @@ def test_export_writes_the_folder_and_prints_what_and_where(design: Path, tmp_pa
 
 
 @pytest.mark.usefixtures("few")
+def test_verify_says_how_many_files_were_read_back(design: Path, tmp_path: Path) -> None:
+    made = run("export", design, "--into", tmp_path / "out", "--verify")
+    count = len(list((tmp_path / "out" / design.stem).iterdir()))
+    assert [line.strip() for line in lines(made.stdout) if "read back" in line] == [
+        f"verified: {count} files read back in full"
+    ]
+    assert "read back" not in run("export", design, "--into", tmp_path / "out").stdout
+
+
+def test_check_says_which_bay_a_difference_is_of_and_what_an_arch_s_figures_mean() -> None:
+    demos = Path(__file__).parents[1] / "demo_designs"
+    said = run("check", demos / "ropewalk-quay.toml", demos / "garden-arch.toml").stdout
+    assert "made minus asked for, in the worst bay" in said
+    assert "thickness at which the inner parallel folds" in said
+    assert "line of thrust off the axis over the thickness" in said
+    assert "greatest thickness" not in said
+
+
+@pytest.mark.usefixtures("few")
 def test_quiet_says_nothing_where_nothing_is_wrong(design: Path, tmp_path: Path) -> None:
     made = run("export", design, "--into", tmp_path / "out", "--quiet")
     assert (made.exit_code, made.output) == (0, "")

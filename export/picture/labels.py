@@ -140,11 +140,11 @@ def _with_leader(tag: Tag, ground: Ground, sizes: Sizes, marks: Marks) -> bool:
     for bits in (HEAVY | TEXT, TEXT):
         for middle, start, end in _leaders(tag, sizes):
             if free(tag, middle, 0.0, ground, 0.4 * sizes.gap) and not ground.crosses(start, end, bits):
-                if tag.round:  # to the circle itself
-                    way = middle - tag.wanted.at
-                    end = middle - way * tag.half[0] / float(np.hypot(*way))
-                marks.paths.append(Path(LOOKS["leader"], np.stack([tag.wanted.at, end])))
-                ground.lines(np.stack([tag.wanted.at, end]), LIGHT)
+                way = middle - tag.wanted.at
+                rim = middle - way * tag.half[0] / float(np.hypot(*way))
+                line = np.stack([tag.wanted.at, rim if tag.round else end])
+                marks.paths.append(Path(LOOKS["leader"], line))
+                ground.lines(line, LIGHT)
                 return enter(tag, middle, 0.0, ground, marks)
     return False
 
