@@ -55,7 +55,7 @@ class _Search:
         """Go by a change, or to the middle of the bracket; give what goes on."""
         change = np.clip(change, -self.reach, self.reach)
         there = self.x + change
-        arrived = np.abs(change) <= self.last * np.maximum(np.abs(there), self.unit)
+        arrived = (np.abs(change) <= self.last * np.maximum(np.abs(there), self.unit)) & np.isfinite(there)
         self.result[self.left[arrived]] = there[arrived]
         low = np.where(self.low > -np.inf, self.low, self.high - 2.0 * self.reach)
         high = np.where(self.high < np.inf, self.high, self.low + 2.0 * self.reach)
