@@ -25,6 +25,20 @@ sag = 300
 """
 
 SITE = "temperature  = [-10, 20, 35]"
+DRAWN = """\
+title = "Bad"
+unit  = "mm"
+
+[drawing]
+links = "rigid"
+[[hanging]]
+mark = "C"
+from = [0, 0, 3000]
+to = [4000, 3000, 2800]
+stock = "DIN 763-6"
+sag = 300
+"""
+
 GIVE = 'support_give = "20 mm"'
 
 BAD_FACTS = [
@@ -167,4 +181,9 @@ BAD_LOADS = [
     Bad("bay's check_load of text", RUN, 'check_load = "80 kg"', 'check_load = "heavy"', "bays", "heavy"),
 ]
 
-BAD = [*BAD_FACTS, *BAD_SITES, *BAD_LOADS]
+BAD_DRAWINGS = [
+    Bad("links of neither kind", DRAWN, 'links = "rigid"', 'links = "stiff"', "links", "is not known here"),
+    Bad("links a number", DRAWN, 'links = "rigid"', "links = 35", "links", "is not known here", "links"),
+]
+
+BAD = [*BAD_DRAWINGS, *BAD_FACTS, *BAD_SITES, *BAD_LOADS]

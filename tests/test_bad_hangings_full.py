@@ -5,11 +5,11 @@ from __future__ import annotations
 import pytest
 
 from tests.bad_designs import Bad
-from tests.bad_hangings_full import BAD, LOADED, RUN, WIRE
+from tests.bad_hangings_full import BAD, DRAWN, LOADED, RUN, WIRE
 from tests.test_bad_input import problems_of
 
 
-@pytest.mark.parametrize("base", [WIRE, LOADED, RUN])
+@pytest.mark.parametrize("base", [WIRE, LOADED, RUN, DRAWN])
 def test_the_designs_that_are_made_wrong_are_right_before(base: str) -> None:
     assert problems_of(base) == ()
 

@@ -305,7 +305,7 @@ def test_a_runs_own_loads_hang_in_their_bays_and_a_bays_beside_them() -> None:
 def test_a_runs_loads_stand_in_its_unfolded_elevation_at_their_plan_distances() -> None:
     body = (
         '[[run]]\nmark = "R"\nsupports = [[0, 0, 5], [4, 0, 5], [4, 6, 5]]\nstock = "rope"\nsag = 0.5\n'
-        'loads = [{ mark = "A", at_plan = 1, force = "30 N", hanger = 0.4 }, { mark = "B", at_plan = 7, force = "9 N" }]\n'
+        'loads = [{ mark = "A", at_plan = 1, force = "30 N", hanger = 0.4 }, { mark = "B", at_plan = 7, force = 9 }]\n'
     )
     (run,) = design(body).pieces
     view = run.views[0]

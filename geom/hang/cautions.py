@@ -33,6 +33,15 @@ def cautions(
     ]  # fmt: skip
     found += _stock(member, figures)
     found += _stiff(member, setting, stretches=cases is not None)
+    links = figures.links
+    if setting.drawing.links == "rigid" and links is not None and not math.isnan(links.rigid_off):
+        text = (
+            f"Drawn as its links hang, rigid and hinged: up to {_length(links.rigid_off, setting)} from the catenary "
+            "that its figures are of. Fittings are shared out among the links."
+        )
+        found.append(
+            Caution("rigid links", member.mark, text, "moments of a link: tan(theta_k) = (V0 + (k - 1/2) W)/H")
+        )
     if member.fact == "length" and figures.span:
         found.append(_given_length(member, figures, setting))
     if weight and figures.pull_horizontal > weight:

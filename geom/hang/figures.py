@@ -26,6 +26,7 @@ class LinksFigures:
     ends: str
     overall: Metres
     neighbours: tuple[Neighbour, ...]
+    rigid_off: Metres = NAN  # greatest distance of rigid links' hinges and middles from the catenary
 
 
 @dataclass(frozen=True)

@@ -19,9 +19,10 @@ from geom.hang.figures import HangingFigures, LinksFigures, LoadFigures, Neighbo
 from geom.hang.held import Place
 from geom.hang.intent import Made, Wish
 from geom.hang.load_views import load_labels, load_tables
+from geom.hang.rigid_links import RigidLinks, rigid_links
 from geom.hang.sensitivity import answers, sag_per_kelvin, sag_per_length
 from geom.hang.sensitivity_loaded import answers_loaded
-from geom.hang.shape import Shape, dimensions, drawn, loaded_shape, shape
+from geom.hang.shape import Shape, dimensions, drawn, loaded_shape, rigid_shape, shape
 from geom.hang.shopwork import INTENDED, UNITS, cut, facts, mass, rounded_pins, used, wanted_of
 from geom.hang.shown import fittings, levels
 from geom.hang.states import AS_HUNG, Looked, State, looked, states
@@ -42,6 +43,7 @@ class _Solved:
     states: Sequence[State]
     bands: Bands
     look: Looked
+    rigid: RigidLinks
 
 
 def fill(
@@ -61,7 +63,7 @@ def _solved(members: Sequence[Asked], wish: Wish, made: Made, setting: Setting) 
     person = np.array([member.person for member in members], dtype=np.float64)
     width = np.array([wind_width(member.stock) for member in members], dtype=np.float64)
     held = states(look, person, width)
-    return _Solved(_columns(members, look), held, bands(members, look), look)
+    return _Solved(_columns(members, look), held, bands(members, look), look, rigid_links(wish, made))
 
 
 def wind_width(stock: Stock) -> float:
@@ -151,7 +153,9 @@ def _shape(start: Floats, end: Floats, at: Mapping[str, Any], number: int, solve
     made = solved.look.made
     if solved.look.wish.carried.any[number]:
         return loaded_shape(start, end, made.loaded, int(np.searchsorted(made.rows, number)))
-    return shape(start, end, at)
+    hung = shape(start, end, at)
+    hinges = solved.rigid.hinges(number) if solved.look.setting.drawing.links == "rigid" else None
+    return hung if hinges is None else rigid_shape(hung, hinges)
 
 
 def _figures(
@@ -180,7 +184,7 @@ def _figures(
         pull_to=pull_to,
         slope_from=float(at["slope_from"]),
         slope_to=float(at["slope_to"]),
-        links=_links(member, at) if member.stock.counted else None,
+        links=_links(member, at, solved.rigid.off_of(number)) if member.stock.counted else None,
         loads=_loads(member, number, solved, form),
         sag_per_length=float(at["sag_per_length"]),
         points=fixed(form.curve.points(setting.drawing.within), -1, 3),
@@ -198,7 +202,7 @@ def _capacity(stock: Stock, pull: float) -> float:
     return NAN if share is None else share
 
 
-def _links(member: Asked, at: Mapping[str, Any]) -> LinksFigures:
+def _links(member: Asked, at: Mapping[str, Any], off: float) -> LinksFigures:
     count, pitch = int(at["count"]), float(member.stock.pitch or NAN)
     base = member.start.at[2]
     rows = zip(at["counts"], at["beside_sag"], at["beside_lowest"], at["beside_pull"], strict=True)
@@ -211,6 +215,7 @@ def _links(member: Asked, at: Mapping[str, Any]) -> LinksFigures:
         neighbours=tuple(
             Neighbour(int(n), float(sag), base + float(low), float(pull)) for n, sag, low, pull in rows if n > 0
         ),
+        rigid_off=off,
     )
 
 

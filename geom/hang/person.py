@@ -43,7 +43,7 @@ class Person:
 
     def of(self, number: int, place: Place) -> OnIt:
         """Return what the case adds to one member, by its number among all."""
-        row = int(np.flatnonzero(self.rows == number)[0])
+        row = int(np.searchsorted(self.rows, number))
         return OnIt(fixed(place.points(self.hang.load_places[row, -1])), float(self.mark[row]))
 
 

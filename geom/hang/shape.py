@@ -80,6 +80,13 @@ def shape(start: Floats, end: Floats, at: Mapping[str, Any]) -> Shape:
     return Shape(start, end, ElasticCatenary(start, end, parameter, float(at["own_length"]), soft))
 
 
+def rigid_shape(hung: Shape, hinges: Floats) -> Shape:
+    """Return a chain as its rigid links hang; hinges along the span, aside and up from its start, (k, 3) m."""
+    points = Place(hung.start, hung.along).points(hinges)
+    points[0], points[-1] = hung.start, hung.end
+    return Shape(hung.start, hung.end, Polyline(points))
+
+
 def loaded_shape(start: Floats, end: Floats, hang: Loaded, row: int) -> Shape:
     """Return one member under loads in place: an elastic catenary from load to load, all joined.
 

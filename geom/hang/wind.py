@@ -54,7 +54,7 @@ class Blown:
 
     def of(self, number: int, place: Place) -> InWind:
         """Return what the case adds to one member, by its number among all."""
-        row = int(np.flatnonzero(self.rows == number)[0])
+        row = int(np.searchsorted(self.rows, number))
         local = self.hang.load_places[row]
         loads = []
         for column, name in enumerate(place.names):

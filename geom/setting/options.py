@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, field
-from typing import Annotated, Any, ClassVar
+from typing import Annotated, Any
 
 from pydantic import BeforeValidator, Field, TypeAdapter, ValidationInfo
 
@@ -52,14 +52,15 @@ Word = str
 class Drawing(Section):
     """The table [drawing]."""
 
-    later: ClassVar[frozenset[str]] = frozenset({"links"})
-
     unit: Annotated[Word | None, choice("mm", "cm", "m", "in", "ft")] = Field(None, description="unit of drawings")
     within: Within = Field(
         0.0005, description="greatest distance of a drawn curve from the true one; 0.5 mm unless given"
     )
     curve: Annotated[Word, choice("polyline", "arcs")] = Field("polyline", description="how curves are drawn")
     version: Annotated[Word, choice("R2010", "R12")] = Field("R2010", description="version of the DXF format")
+    links: Annotated[Word, choice("curve", "rigid")] = Field(
+        "curve", description='"rigid": chains are drawn as the polygon that rigid links hang in'
+    )
     sheet: Annotated[Word, choice("A0", "A1", "A2", "A3", "A4")] = Field("A3", description="size of paper")
 
 
