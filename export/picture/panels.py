@@ -91,7 +91,7 @@ def elevation(subject: Subject, print_: Print, *, marks: Marks = "free") -> Pane
     geometry = printed(subject.seen.box, per)
     wanted = _symbols(subject, print_, drawn)
     core = around(geometry, drawn.box)
-    held = _with_levels(subject.measures, core, per, sizes)
+    held = _with_blocks(wanted, _with_levels(subject.measures, core, per, sizes), sizes)
     bay_marks = [mark for mark in wanted if mark.role == "bay"]
     wanted = [mark for mark in wanted if mark.role != "bay"]
     bays = strip(bay_marks, held[1], sizes)
@@ -216,6 +216,19 @@ def _with_levels(found: Sequence[Measure], core: Box, per: float, sizes: Sizes) 
     lowest = [float(measure.q[1]) / per for measure in found if measure.kind == "level" and measure.side == "inside"]
     foot = min(lowest, default=core[1]) - 2.0 * sizes.note
     return (core[0], min(core[1], foot), core[2], core[3])
+
+
+def _with_blocks(wanted: Sequence[Wanted], held: Box, sizes: Sizes) -> Box:
+    """The box that rows stand off where marks of narrow blocks will stand outside their ring."""
+    blocks = [mark for mark in wanted if mark.role == "block"]
+    if len(blocks) < 2:
+        return held
+    steps = np.abs(np.diff([mark.at for mark in blocks], axis=0)).max(axis=1)
+    wide = max(Text(LOOKS["mark"], mark.text, (0, 0), sizes.note).width for mark in blocks)
+    if float(np.median(steps)) > wide * sizes.small / sizes.note:
+        return held
+    room = max(0.0, wide + 3 * sizes.note - sizes.first_row)
+    return (held[0] - room, held[1], held[2] + room, held[3])
 
 
 def _aside(measure: Measure, core: Box, sizes: Sizes) -> Box:
