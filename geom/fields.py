@@ -157,12 +157,15 @@ Pressure = Annotated[float, _bare(units.modulus, NOT_NEGATIVE)]
 ForcePerLength = Annotated[float, _bare(units.force_density, POSITIVE)]
 ForcePerArea = Annotated[float, _bare(units.force_per_area, NOT_NEGATIVE)]
 Density = Annotated[float, _bare(units.density, POSITIVE)]
-Expansion = Annotated[float, _bare(units.expansion, NO_LIMITS)]
+Expansion = Annotated[
+    float, _bare(units.expansion, Limits(least=-1e-3, most=1e-3, words="a share per kelvin, like 12e-6 of steel"))
+]
 Temperature = Annotated[
     float, _bare(units.temperature, Limits(above=-273.15, most=2000.0, words="degrees Celsius over -273.15"))
 ]
 Angle = Annotated[float, _bare(units.angle, NO_LIMITS)]
 Ratio = Annotated[float, _bare(units.ratio, NOT_NEGATIVE)]
+Share = Annotated[float, _bare(units.ratio, Limits(least=0.0, most=10.0, words="0 or more and at most 10, like 0.05"))]
 
 
 def _whole(limits: Limits) -> BeforeValidator:
@@ -223,7 +226,7 @@ Text = Annotated[str, BeforeValidator(one_line)]
 
 def _flag(raw: Any) -> bool:  # noqa: ANN401
     if not isinstance(raw, bool):
-        raise ValueError(f"{say(raw)} is neither true nor false")
+        raise ValueError(f"{say(raw)} is neither true nor false; give one of them, without quotes")
     return raw
 
 

@@ -170,6 +170,11 @@ class _Reader:
             if not isinstance(raw, dict):
                 self.add((table,), f"[{table}]", "", f"is {say(raw)}, not tables; write [{table}.NAME]")
                 raw = {}
+            loose = [key for key, entry in raw.items() if key in model.keys() and not isinstance(entry, dict)]  # noqa: SIM118
+            if loose:
+                text = f"has `{loose[0]}` of its own; write [{table}.NAME], each with a name"
+                self.add((table, loose[0]), f"[{table}]", "", text)
+                raw = {key: entry for key, entry in raw.items() if key not in model.keys()}  # noqa: SIM118
             so_far = replace(known, named=dict(result))
             result[table] = {name: self._entry(table, model, name, entry, so_far) for name, entry in raw.items()}
         return result
@@ -317,7 +322,7 @@ def _words(entry: Mapping[str, Any], cause: object, model: type[Section]) -> str
             return "is not solved by this version yet; leave it out"
         case "extra_forbidden":
             listed = ", ".join(model.keys())
-            return f"is not known{near(key, model.keys()) or f'; known here: {listed}'}"
+            return f"is not known{near(key, model.keys()) or f'; give one of {listed}'}"
         case _ if cause is not None:
             return str(cause)
         case "model_type" | "dict_type" | "model_attributes_type":

@@ -9,7 +9,7 @@ from pydantic import BeforeValidator, Field, TypeAdapter, ValidationInfo
 
 from geom import units
 from geom.errors import say
-from geom.fields import Limits, PointField, Pressure, Ratio, Reach, Section, Size, Temperature, Within, choice
+from geom.fields import Limits, PointField, Pressure, Reach, Section, Share, Size, Temperature, Within, choice
 
 
 class Shop(Section):
@@ -19,7 +19,7 @@ class Shop(Section):
     step: Size = Field(0.001, description="cut lengths are rounded to this; 1 mm unless given")
     kerf: Reach = Field(0.0, description="what a cut takes of a rope or bar")
     cut_tolerance: Reach = Field(0.0, description="+/- on a cut length")
-    spares: Ratio = Field(0.0, description="share added to the order, 0.05 for five in a hundred")
+    spares: Share = Field(0.0, description="share added to the order, 0.05 for five in a hundred")
 
 
 _TEMPERATURE: TypeAdapter[float] = TypeAdapter(Temperature)

@@ -63,9 +63,6 @@ def _found(like: str) -> Stock:
 
 
 def _constructed(entry: StockEntry) -> Stock:
-    diameter = _across(entry)
-    if diameter is None:
-        raise Faulty("diameter", f"is missing; give the diameter of the {entry.construction}")
     try:
         found = rope_class(entry.construction or "")
     except ValueError as error:
@@ -75,6 +72,9 @@ def _constructed(entry: StockEntry) -> Stock:
         raise Faulty(
             "construction", f"{say(entry.construction)} is in no table; give one like {listed}, or leave it out"
         )
+    diameter = _across(entry)
+    if diameter is None:
+        raise Faulty("diameter", f"is missing; give the diameter of the {entry.construction}")
     return found.stock(round(diameter * 1e3, 9))  # 0.0063 m is 6.3 mm
 
 
@@ -82,7 +82,7 @@ def _across(entry: StockEntry) -> float | None:
     """Return the diameter of a rope, rod or ball: written `diameter`, or `width` or `wire` where it alone is given."""
     given = [value for value in (entry.diameter, entry.width, entry.wire) if value is not None]
     if len(set(given)) > 1 and entry.diameter is None:
-        raise Faulty("diameter", "is missing; `wire` and `width` are of a link, and differ")
+        raise Faulty("diameter", "is missing; give it, as `wire` and `width` are of a link, and differ")
     return given[0] if given else None
 
 
