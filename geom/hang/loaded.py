@@ -1,6 +1,6 @@
 r"""Members that stretch, under loads: point loads, several stocks in series, a load spread over the plan, side wind.
 
-Between loads a member is an elastic catenary (`geom.hang.sections`; J. M. O'Brien and W. T. Francis 1964; H. B.
+Between loads a member is an elastic catenary (`geom.hang.sections`; W. T. O'Brien and A. J. Francis 1964; H. B.
 Jayaraman and W. C. Knudson, "A curved element for the analysis of cable structures", Computers and Structures 14
 (1981) 325-333), or, under a spread load, the curve of `geom.hang.spread`. Everything follows from the tension at the
 start, one unknown vector (`geom.hang.tension`). A side wind tilts the load of every section and load; where there is
@@ -15,7 +15,7 @@ Examples
 >>> wire = Stocks(length=[[16.4]], weight=[[1.5]], stiffness=[[2e6]])
 >>> lanterns = Loads(at=[[4.0, 8.0, 12.0]], force=[[60.0, 60.0, 60.0]], on_plan=[[True, True, True]])
 >>> round(float(hang(16.0, 0.0, wire, loads=lanterns).sag[0]), 3)
-1.616
+1.621
 """
 
 import numpy as np

@@ -5,7 +5,7 @@ weight, tilted by a side wind. With F(s) the tension, drawn forward along the me
 
     r(L) = int (1/EA + 1/|F|) F ds
 
-(J. M. O'Brien and W. T. Francis, "Cable movements under two-dimensional loads", Journal of the Structural Division,
+(W. T. O'Brien and A. J. Francis, "Cable movements under two-dimensional loads", Journal of the Structural Division,
 ASCE 90 (1964) ST3, in the plane; the vector form is the same seen in the plane of w and F). Referred to the tension F
 at mid-length, n the direction against the load, F = c n + h, q = |w| L/2, V1 = c - q, V2 = c + q, T1, T2 the pulls at
 both ends, p = 2L/(T1 + T2), eps = 2q/(T1 + T2), alpha = artanh(eps)/eps - 1, e = L/EA,

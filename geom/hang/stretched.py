@@ -81,7 +81,7 @@ class Stretched:
 
     @cached_property
     def sag_mid(self) -> Floats:
-        """Vertical distance under the chord at mid-span, metres."""
+        """Vertical distance under the chord at mid-span, metres; NaN for a taut member on a plumb line."""
         return evaluate_one(forms.sag_mid, *self._shape)
 
     @cached_property

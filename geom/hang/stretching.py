@@ -36,7 +36,7 @@ from geom.hang.closing import coth_excess, half_angle, log_sinhc, sinhc_minus_on
 from geom.hang.roots import newton
 
 # Over 200,000 members with b from 1e-9 to 1e-2 the start is off by 3 % at most, and the second of the quick steps is
-# over 1e-6 for one in a thousand. What is left after a third-order step of 1e-6 is of the order of its cube, 1e-18,
+# over 1e-6 for one in a hundred. What is left after a third-order step of 1e-6 is of the order of its cube, 1e-18,
 # and, as the second derivative is taken for small r, of r^2 times its square.
 _QUICK_ENOUGH = 1e-6
 _SOFT = 0.02  # r, half the strain of a taut member, from which on all is solved the safe way

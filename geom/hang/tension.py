@@ -5,8 +5,9 @@ convex function of the tension, the complementary energy less F.D: Newton's meth
 down to its one minimum from anywhere. Near taut the minimum lies in a narrow curved valley; the start, the exact
 answer for a shallow member, is in it.
 
-Measured over 20,000 members of up to five loads, from taut to three times as long as the chord and with or without
-stretch (see the tests).
+Over 20,000 random members, from taut to four times as long as the chord, with up to five loads of a hundredth to ten
+times their weight, stretching or not, blown or not, the function is evaluated 4.3 times on the mean without loads
+and 5.0 to 5.6 times with them, at most 7 and 38 times; light pieces that are slack beside heavy loads take more.
 """
 
 from dataclasses import dataclass
