@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Collection, Iterable, Iterator, Sequence
 from dataclasses import replace
 from itertools import groupby, pairwise
+from math import isfinite
 
 from geom.hang.asked import Asked
 from geom.result import Dimension, Label, Piece, Said, View, fixed
@@ -13,6 +14,7 @@ from geom.setting.supports import Support
 
 _SAME = 1e-6  # m: levels and spans nearer than this are one on any drawing
 _MOST_SPANS = 12  # bays that are dimensioned one by one: past it equal ones that follow one another are put together
+_ROUNDED = 0.0005  # m: sags that differ by less are one on a drawing
 _FITTED = "takes {}"
 
 
@@ -54,7 +56,7 @@ def with_bays(view: View, bays: Sequence[Piece], supports: Sequence[Label]) -> V
     middles = [label for label in view.labels or () if label.role == "part"]
     shown = (replace(label, role="bay", below=tuple(bay_facts(bay))) for label, bay in zip(middles, bays, strict=True))
     loads = [label for label in view.labels or () if label.role == "load"]
-    return replace(view, labels=(*held, *loads, *shown), dimensions=(*_sizes(view.dimensions, bays), *levels_))
+    return replace(view, labels=(*held, *loads, *shown), dimensions=(*_sizes(view.dimensions), *levels_))
 
 
 def bay_facts(bay: Piece) -> Iterator[Said]:
@@ -66,8 +68,9 @@ def bay_facts(bay: Piece) -> Iterator[Said]:
     takes = [_taken(bay, end) for end in (0, 1)]
     if any(takes):
         yield Said("takes {} / {}", (takes[0], takes[1]))
-    yield Said("sag {}", (bay.figures.sag,))
-    yield Said("lowest {}", (bay.figures.lowest,))
+    for name, value in (("sag", bay.figures.sag), ("lowest", bay.figures.lowest)):
+        if isfinite(value):
+            yield Said(f"{name} {{}}", (value,))
 
 
 def _taken(bay: Piece, end: int) -> float:
@@ -77,17 +80,20 @@ def _taken(bay: Piece, end: int) -> float:
     return lengths[0] if lengths else 0.0
 
 
-def _sizes(found: Sequence[Dimension], bays: Sequence[Piece]) -> Iterator[Dimension]:
+def _sizes(found: Sequence[Dimension]) -> Iterator[Dimension]:
     """Bays and total, the sag of the first and the deepest bay, the lowest point of all, and what else was measured."""
     spans = [replace(one, says="", tells=number == 0) for number, one in enumerate(_said(found, "span"))]
     equal = len(spans) > _MOST_SPANS and max(abs(one.value - spans[0].value) for one in spans) < _SAME
     yield from _grouped(spans) if len(spans) > _MOST_SPANS and not equal else spans[: 1 if equal else None]
     sags = _said(found, "sag under chord")
-    deepest = max(range(len(sags)), key=lambda number: bays[number].figures.sag)
-    for number in dict.fromkeys((0, deepest)):
-        if number == 0 or sags[number].value - sags[0].value > 0.0005:  # m: what a drawing rounds to
-            yield replace(sags[number], says="sag", tells=number == 0)
-    yield replace(min(_said(found, "lowest point"), key=lambda one: one.value), tells=True)
+    if sags:
+        yield replace(sags[0], says="sag", tells=True)
+        deepest = max(sags, key=lambda one: one.value)
+        if deepest.value - sags[0].value > _ROUNDED:
+            yield replace(deepest, says="sag")
+    lowest = _said(found, "lowest point")
+    if lowest:
+        yield replace(min(lowest, key=lambda one: one.value), tells=True)
     for one in found:
         if one.says not in ("span", "sag under chord", "lowest point", "level difference"):
             total = one.kind == "horizontal" and not one.says
