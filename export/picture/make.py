@@ -48,9 +48,7 @@ def contents(result: Result, drawing: Drawing, *, extra: Sequence[str] = ()) -> 
     wording = Wording(result.setting.drawing_unit)
     words = noting.words(result, extra=extra)
     subjects = tuple(
-        subject(piece, view, drawing, wording, words.numbers.get(piece.mark, ()))
-        for piece in result.pieces
-        for view in piece.views
+        subject(piece, view, drawing, wording, words.of(piece.mark)) for piece in result.pieces for view in piece.views
     )
     site = planning.site(result, drawing) if planning.wanted(result) else None
     ends = planning.in_line(subjects[0], site) if site is not None else None

@@ -31,6 +31,15 @@ class Words:
     cautions: tuple[tuple[str, str], ...]  # of each what stands before it in the warm colour, and its text
     numbers: dict[str, tuple[int, ...]]  # a piece's mark -> the numbers of its cautions
 
+    def of(self, mark: str) -> tuple[int, ...]:
+        """Return the numbers of the cautions of a piece and of its parts."""
+        of_it = (
+            numbers
+            for pieces, numbers in self.numbers.items()
+            if any(one == mark or one.startswith(f"{mark}.") for one in pieces.split(", "))
+        )
+        return tuple(sorted({number for numbers in of_it for number in numbers}))
+
     def with_line(self, line: str) -> "Words":
         """Return the same words with one more line before the cautions."""
         return replace(self, lines=(*self.lines, (LOOKS["note"], line)))
