@@ -49,6 +49,7 @@ class Asked:
     branch: str = ""  # of `end_pull`: shallow or deep
     loads: tuple[Load, ...] = ()
     spread: float = 0.0  # N per metre on plan
+    floor: float = math.nan  # elevation of a floor it may lie on, m
     person: float = 0.0  # weight of a person to be tried on it, N
 
     @property
@@ -112,6 +113,7 @@ def wishes(members: Sequence[Asked], setting: Setting) -> Wish:
         pitch=np.array(pitch, dtype=np.float64),
         parity=np.array([member.parity for member in members], dtype=np.str_),
         rounding=np.array([member.rounding for member in members], dtype=np.str_),
+        floor=np.array([member.floor - member.start.at[2] for member in members]),
         carried=carried([member.loads for member in members], [member.spread for member in members]),
     )
 

@@ -100,3 +100,5 @@ class HangingFigures:
     sag_per_kelvin: Metres = NAN  # change of the greatest sag for a kelvin
     sag_per_support: SagPerSupport | None = None
     band: Band | None = None
+    hanging: Metres = NAN  # over a floor, as made: what hangs, and what lies on it
+    lying: Metres = NAN

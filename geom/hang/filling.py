@@ -22,7 +22,7 @@ from geom.hang.load_views import load_labels, load_tables
 from geom.hang.rigid_links import RigidLinks, rigid_links
 from geom.hang.sensitivity import answers, sag_per_kelvin, sag_per_length
 from geom.hang.sensitivity_loaded import answers_loaded
-from geom.hang.shape import Shape, dimensions, drawn, loaded_shape, rigid_shape, shape
+from geom.hang.shape import Shape, dimensions, drawn, loaded_shape, lying_shape, rigid_shape, shape
 from geom.hang.shopwork import INTENDED, UNITS, cut, facts, mass, rounded_pins, used, wanted_of
 from geom.hang.shown import fittings, levels
 from geom.hang.states import AS_HUNG, Looked, State, looked, states
@@ -96,7 +96,12 @@ def _columns(members: Sequence[Asked], look: Looked) -> dict[str, NDArray[Any]]:
         for name, values in under.items():
             found[name] = np.array(found[name])
             found[name][made.rows] = values
-    return found
+    for name in ("sag_per_length", "sag_per_kelvin", "sag_apart", "sag_raised"):
+        found[name] = np.array(found[name])
+        found[name][made.lies.rows] = np.nan
+    down = np.where(np.isfinite(wish.floor), 0.0, np.nan)
+    down[made.lies.rows] = made.lies.laid.lying / wish.growth[made.lies.rows]
+    return found | {"lying": down}
 
 
 def _differences(members: Sequence[Asked], look: Looked) -> Floats:
@@ -153,6 +158,9 @@ def _shape(start: Floats, end: Floats, at: Mapping[str, Any], number: int, solve
     made = solved.look.made
     if solved.look.wish.carried.any[number]:
         return loaded_shape(start, end, made.loaded, int(np.searchsorted(made.rows, number)))
+    part = made.lies.part(number)
+    if part is not None:
+        return lying_shape(start, end, made.lies, part)
     hung = shape(start, end, at)
     hinges = solved.rigid.hinges(number) if solved.look.setting.drawing.links == "rigid" else None
     return hung if hinges is None else rigid_shape(hung, hinges)
@@ -194,6 +202,8 @@ def _figures(
         sag_per_kelvin=float(at["sag_per_kelvin"]),
         sag_per_support=SagPerSupport(from_out=apart, from_up=-raised, to_out=apart, to_up=raised),
         band=solved.bands.of(number, base),
+        hanging=float(at["pin"]) - float(at["lying"]),
+        lying=float(at["lying"]),
     )
 
 

@@ -22,6 +22,7 @@ from geom.hang.carried_facts import length_of
 from geom.hang.formulas import chord
 from geom.hang.held import Held, of_loaded, of_stretched
 from geom.hang.loaded import Loaded
+from geom.hang.lying import Lying, lying, of_lying
 from geom.hang.stretched import Stretched
 
 Floats = NDArray[np.float64]
@@ -55,6 +56,7 @@ class Wish:
     takes : length of the fittings at both ends together, m
     pitch : m; NaN of rope and rod
     parity, rounding : as links.count reads them
+    floor : height of a floor over `from`, m; NaN for none
     carried : what they carry
     """
 
@@ -73,6 +75,7 @@ class Wish:
     pitch: Floats
     parity: NDArray[np.str_]
     rounding: NDArray[np.str_]
+    floor: Floats
     carried: Carried
 
     @property
@@ -119,12 +122,19 @@ class Made:
     loaded: Loaded
 
     rows: NDArray[np.intp]
+    floor: Floats
+
+    @cached_property
+    def lies(self) -> Lying:
+        """Those that lie on a floor as hung."""
+        return lying(self.made, self.floor)
 
     @cached_property
     def held(self) -> Held:
         """All members as hung, under what they carry."""
         plain = of_stretched(self.made)
-        return plain.with_rows(self.rows, of_loaded(self.loaded)) if self.rows.size else plain
+        plain = plain.with_rows(self.rows, of_loaded(self.loaded)) if self.rows.size else plain
+        return plain.with_rows(self.lies.rows, of_lying(self.lies)) if self.lies.rows.size else plain
 
 
 def hung(wish: Wish, lengths: Lengths, *, growth: Floats | None = None, closer: Floats | float = 0.0) -> Stretched:
@@ -170,7 +180,7 @@ def made(wish: Wish) -> Made:
     can = chain & np.isfinite(wished.pin)
     rows = wish.rows
     if not can.any():
-        return Made(as_wished, as_wished, wished, wished, count, least, under(wish, rows, wished), rows)
+        return Made(as_wished, as_wished, wished, wished, count, least, under(wish, rows, wished), rows, wish.floor)
     pitch, takes, parity = wish.pitch[can], wish.takes[can], wish.parity[can]
     least[can] = _least(wish.chord[can] / wish.growth[can] - takes, pitch, parity)
     wanted = links.count(wished.pin[can] - takes, pitch, rounding=wish.rounding[can], parity=parity)
@@ -182,7 +192,9 @@ def made(wish: Wish) -> Made:
     pin[can] = count[can] * pitch + takes
     excess[can] = pin[can] - wish.chord[can]
     lengths = Lengths(pin, excess)
-    return Made(as_wished, hung(wish, lengths), wished, lengths, count, least, under(wish, rows, lengths), rows)
+    return Made(
+        as_wished, hung(wish, lengths), wished, lengths, count, least, under(wish, rows, lengths), rows, wish.floor
+    )
 
 
 def under(wish: Wish, rows: NDArray[np.intp], lengths: Lengths) -> Loaded:
@@ -277,6 +289,10 @@ def neighbours(wish: Wish, count: Ints) -> tuple[Ints, Floats, Floats, Floats]:
     for place in range(pins.shape[1] if rows.size else 0):
         part = under(wish, rows, of_pins(wish, pins[:, place]))
         sag[rows, place], lowest[rows, place], pull[rows, place] = part.sag, part.lowest, part.horizontal
+    for place in range(pins.shape[1] if np.isfinite(wish.floor).any() else 0):
+        lies = lying(hung(wish, of_pins(wish, pins[:, place])), wish.floor)
+        held = of_lying(lies)
+        sag[lies.rows, place], lowest[lies.rows, place], pull[lies.rows, place] = held.sag, held.lowest, held.horizontal
     return beside, sag, lowest, pull
 
 

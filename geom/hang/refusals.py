@@ -55,13 +55,22 @@ def refusals(members: Sequence[Asked], wish: Wish, made: Made, setting: Setting)
     ends = np.where(wish.carried.on_plan, wish.span[:, np.newaxis], made.lengths.pin[:, np.newaxis])
     outside = (wish.carried.at <= 0.0) | (wish.carried.at >= ends)
     beyond = outside.any(axis=1) | (wish.carried.any & (wish.span < AT_ONE_POINT))
-    doubtful = beyond | taut | many | bare | odd | no_links | nothing | nowhere | missed
+    person = np.array([member.person > 0.0 for member in members])
+    under = np.isfinite(wish.floor) & (_under(wish) | wish.carried.any | person)
+    by_hang = ~np.isin(wish.fact, BY_LENGTH)
+    under[made.lies.rows] |= by_hang[made.lies.rows]
+    doubtful = under | beyond | taut | many | bare | odd | no_links | nothing | nowhere | missed
     found = {}
     for number in np.flatnonzero(doubtful).tolist():
         pin, least = float(made.wished_lengths.pin[number]), int(made.least[number])
-        curve = _Curve(float(chord[number]), pin, least, number, wish)
+        curve = _Curve(float(chord[number]), pin, least, number, wish, number in made.lies.rows)
         found[number] = _reason(members[number], curve, setting)
     return found or _too_many(members, made)
+
+
+def _under(wish: Wish) -> NDArray[np.bool_]:
+    """Whether a floor is over a support."""
+    return np.asarray(np.minimum(0.0, wish.level_difference) < wish.floor)
 
 
 def _hangs(hang: Stretched, wish: Wish) -> NDArray[np.bool_]:
@@ -110,6 +119,7 @@ class _Curve:
     least: int
     number: int
     wish: Wish
+    on_floor: bool
 
     @property
     def least_end_pull(self) -> float:
@@ -138,6 +148,7 @@ def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal
     if member.start.at[:2] == member.end.at[:2] and fact not in (*BY_LENGTH, "lowest"):
         text = "has no meaning between supports on one plumb line, where the pull is 0"
         yield refuse(fact, f"{text}; give length, links, slack or lowest")
+    yield from _floor(member, setting)
     yield from _loads(member, curve, setting)
     if fact == "links":
         yield _links(member, chord, curve.least, setting)
@@ -152,6 +163,9 @@ def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal
         text = f"{say(value)} is not under the lower support at {say(member.lower)}"
         yield refuse("lowest", f"{text}; give less than that")
     yield from _as_hung(member, curve, setting)
+    if curve.on_floor:
+        text = f"would lie on the floor at {say(member.floor)}, which bears some of it; give length, links or slack"
+        yield refuse(fact, text)
     more, less = _EASE[fact]
     if not curve.length <= MOST_LENGTH and not (fact == "pull" and value > member.stock.weight * chord):
         yield refuse(fact, f"makes the member longer than {say(MOST_LENGTH)}, over any measure; give {less}")
@@ -165,6 +179,15 @@ def _reasons(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal
         yield refuse(fact, f"{text}; give {more}, or a finer `step` in [shop]")
     text = f"leaves the member too taut over {say(chord)} to be made"
     yield refuse(fact, f"{text}; give {more}")
+
+
+def _floor(member: Asked, setting: Setting) -> Iterator[Refusal]:
+    if member.floor > member.lower:
+        text = f"{setting.stated(member.floor)} is over the lower support at {setting.stated(member.lower)}; give less"
+        yield refuse("floor", text)
+    for key, given in (("loads", member.loads), ("spread", member.spread), ("check_load", member.person)):
+        if given and not math.isnan(member.floor):
+            yield refuse(key, "is not solved of a member over a floor; leave one of the two out")
 
 
 def _loads(member: Asked, curve: _Curve, setting: Setting) -> Iterator[Refusal]:

@@ -50,6 +50,7 @@ class RigidLinks:
 def rigid_links(wish: Wish, made: Made) -> RigidLinks:
     """Return the polygons of all chains of two links or more that carry nothing and have a span."""
     chain = np.isfinite(wish.pitch) & (made.count >= 2) & (made.lengths.excess > 0.0)
+    chain[made.lies.rows] = False
     rows = np.flatnonzero(chain & (wish.span > 0.0) & ~wish.carried.any)
     if rows.size * int(made.count[rows].max(initial=0)) > MOST_PADDED:
         rows = rows[:0]

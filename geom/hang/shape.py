@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, replace
 from itertools import pairwise
@@ -14,6 +15,7 @@ from geom.curves import Catenary, Curve, ElasticCatenary, Joined, Polyline, Samp
 from geom.hang.figures import HangingFigures
 from geom.hang.held import Place
 from geom.hang.loaded import Loaded
+from geom.hang.lying import Lying
 from geom.result import Dimension, Line, fixed
 
 Floats = NDArray[np.float64]
@@ -78,6 +80,29 @@ def shape(start: Floats, end: Floats, at: Mapping[str, Any]) -> Shape:
     if soft == 0.0:
         return Shape(start, end, Catenary(start, end, parameter, length=length))
     return Shape(start, end, ElasticCatenary(start, end, parameter, float(at["own_length"]), soft))
+
+
+def lying_shape(start: Floats, end: Floats, lies: Lying, row: int) -> Shape:
+    """Return a member that lies on a floor between its strands; `row` is its place among those that do."""
+    plain = Shape(start, end, Segment(start, end))
+    place, laid = Place(start, plain.along), lies.laid
+    soft = float(lies.weight[row] / laid.free.sections.stiffness[row, 0])
+    span, floor, h = float(laid.free.span[row]), float(lies.floor[row]), float(laid.horizontal[row])
+    first, last = float(laid.at_from.plan[row]), span - float(laid.at_to.plan[row])
+    down, up = place.points(np.array([[first, 0.0, floor], [last, 0.0, floor]]))
+    parts: list[Curve] = []
+    ends = (start, down), (down, up), (up, end)
+    lengths = float(laid.at_from.length[row]), math.nan, float(laid.at_to.length[row])
+    for (p, q), length in zip(ends, lengths, strict=True):
+        if float(np.linalg.norm(q - p)) <= _LEAST * span:
+            continue
+        if math.isnan(length) or h <= 0.0:
+            parts.append(Segment(p, q))
+        elif soft > 0.0:
+            parts.append(ElasticCatenary(p, q, h / float(lies.weight[row]), length, soft))
+        else:
+            parts.append(Catenary(p, q, h / float(lies.weight[row])))
+    return Shape(start, end, Joined(parts))
 
 
 def rigid_shape(hung: Shape, hinges: Floats) -> Shape:

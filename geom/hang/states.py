@@ -13,6 +13,7 @@ from geom.hang.clearance_loaded import least_over_loaded
 from geom.hang.held import Held, Place, of_loaded, of_stretched
 from geom.hang.intent import Made, Wish, hung
 from geom.hang.loaded import Loaded
+from geom.hang.lying import lying, lying_rows, of_lying
 from geom.hang.person import Person, persons
 from geom.hang.stretched import Stretched
 from geom.hang.wind import Blown, blown
@@ -103,7 +104,9 @@ def states(look: Looked, person: Floats, wind_width: Floats) -> tuple[State, ...
     if look.made.rows.size:
         found.append(_bare(look))
     if setting.site.wind:
-        blow = blown(look.wish, look.marked, look.made.lengths.pin, wind_width, setting.site.wind)
+        width = np.array(wind_width)
+        width[look.made.lies.rows] = 0.0  # what lies is not blown about, and its strands are left out
+        blow = blown(look.wish, look.marked, look.made.lengths.pin, width, setting.site.wind)
         found += [_in_wind(look, blow)] if blow.rows.size else []
     if (person > 0.0).any():
         found += [_with_person(look, one) for one in persons(look.wish, look.marked, look.made.lengths.pin, person)]
@@ -114,6 +117,7 @@ def _gaps(look: Looked, hang: Stretched, loaded: Loaded | None, *, moved: float 
     """Least clearances and their places: of what carries, under what it carries."""
     gap, place = least_over(hang, look.ground, moved=moved)
     rows = look.made.rows
+    gap[lying_rows(hang, look.wish.floor)] = np.nan  # it lies on its floor: there is none
     if loaded is not None and rows.size:
         hanger = look.marked.hanger[rows]
         gap[rows], place[rows] = least_over_loaded(loaded, rows, hanger, look.ground, moved=moved)
@@ -134,6 +138,8 @@ def state(look: Looked, case: str, temperature: float, *, grown: Floats, closer:
         bare = replace(wish.bare, span=wish.span - closer, growth=grown).of(rows)
         loaded = hung_loaded(bare, look.marked.of(rows), look.made.lengths.pin[rows])
         held = held.with_rows(rows, of_loaded(loaded))
+    lies = lying(hang, wish.floor)
+    held = held.with_rows(lies.rows, of_lying(lies)) if lies.rows.size else held
     gaps = _gaps(look, hang, loaded, moved=0.5 * closer)
     return State(case, "dead load only", temperature, np.ones(wish.span.shape, dtype=np.bool_), held, *gaps)
 

@@ -36,7 +36,7 @@ from geom.setting.options import Setting
 from geom.setting.stock import StockRef
 from geom.setting.supports import SupportRef
 
-LATER = frozenset({"floor"})
+LATER: frozenset[str] = frozenset()
 
 Slope = Annotated[float, BeforeValidator(lambda raw: _SLOPE.check(units.angle(raw), raw))]
 _SLOPE = Limits(above=-math.pi / 2, below=math.pi / 2, words="degrees under the horizontal, between -90 and 90")
@@ -83,6 +83,7 @@ class Hanging(Member):
     clear: Clear | None = Field(None, description="ground under it and the clearance wanted")
     loads: tuple[LoadEntry, ...] = Field((), description="what hangs on it, [{ mark, at or at_plan, mass or force }]")
     spread: ForcePerLength | None = Field(None, description="load spread over it, per metre on plan")
+    floor: Elevation | None = Field(None, description="elevation of a floor that it may lie on")
     check_load: Mass | None = Field(None, description="a person's mass, tried at its worst places: misuse")
 
 
@@ -106,6 +107,7 @@ def asked(member: Hanging) -> Asked:
         branch=member.branch or "",
         loads=tuple(_load(number, load) for number, load in enumerate(member.loads)),
         spread=member.spread or 0.0,
+        floor=math.nan if member.floor is None else member.floor,
         person=(member.check_load or 0.0) * units.STANDARD_GRAVITY,
     )
 
