@@ -39,7 +39,7 @@ def test_there_are_exactly_two_commands() -> None:
     commands = re.findall(r"^    \$ (.*)$", README, flags=re.MULTILINE)
     assert len(commands) == 2
     assert "sagwright export demo_designs --into out" in commands[0]
-    assert commands[1].endswith("pytest -q")
+    assert commands[1].endswith("pytest -q -n auto")
 
 
 def test_every_output_has_its_row_in_the_table_of_files() -> None:
