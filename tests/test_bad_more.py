@@ -100,3 +100,17 @@ def test_whatever_stands_at_a_key_is_taken_or_answered_there_with_a_remedy(heade
         assert all(len(one.splitlines()) == 1 and any(word in one for word in REMEDIES) for one in said), said
         assert len({(problem.line, problem.key) for problem in found}) == len(found), said
         assert not said or any(problem.line == line or "given together" in problem.text for problem in found), said
+
+
+def test_a_design_of_too_many_pieces_is_refused_before_any_is_read(monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setattr("geom.design.reader.MOST_PIECES", 2)
+    several = ARCH + ARCH[ARCH.index("[[arch]]") :] + NET[NET.index("[[net]]") :]
+    assert rendered(several) == ["bad.toml:1: 3 pieces are more than the 2 of one design; divide it"]
+
+
+def test_links_are_counted_over_all_members_of_a_design_and_the_one_too_many_is_named() -> None:
+    one = '[[hanging]]\nmark = "S{0}"\nfrom = [0, {0}, 0]\nto = ["9 km", {0}, 0]\nstock = "DIN 763-6"\nlinks = 250000\n'
+    text = 'unit = "mm"\n' + "".join(one.format(number) for number in range(6))
+    (said,) = rendered(text)
+    assert said.startswith('bad.toml:31: hanging "S4": links: comes to 1250000 links up to here')
+    assert rendered(text.replace("links = 250000\n", "links = 250000\ncopies = 2\n")) != []

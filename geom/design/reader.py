@@ -355,8 +355,12 @@ def read(text: str, name: str) -> Reading:
         return Reading(None, (syntax_problem(text, error),))
     except (ValueError, RecursionError):  # a whole number of over 4,300 digits; brackets in brackets without end
         return Reading(None, (Problem(1, "", "", "holds a number or a nesting that is too long; shorten it"),))
-    reader = _Reader(raw, index(text))
     models = {entry.name: entry.model for entry in kinds().values()}
+    pieces = sum(len(raw[name]) for name in models if isinstance(raw.get(name), list))
+    if pieces > MOST_PIECES:  # nothing else is worth the minutes that it would take
+        text = f"{pieces} pieces are more than the {MOST_PIECES} of one design; divide it"
+        return Reading(None, (Problem(1, "", "", text),))
+    reader = _Reader(raw, index(text))
     reader.top_level(models)
     unit = reader.unit()
     title = reader.title("".join(c if c.isprintable() else " " for c in name))
@@ -368,7 +372,9 @@ def read(text: str, name: str) -> Reading:
     known = replace(known, named=reader.named(known))
     items = reader.items(models, known)
     reader.marks(models)
-    _count(reader, raw, models)
+    if not pieces and not reader.problems:
+        listed = ", ".join(f"[[{name}]]" for name in models)
+        reader.problems.append(Problem(1, "", "", f"the design has no piece; add one of {listed}"))
     problems = tuple(sorted(reader.problems, key=lambda problem: problem.line))
     if unit is None:
         return Reading(None, problems)
@@ -379,17 +385,6 @@ def read(text: str, name: str) -> Reading:
         if (table, entry) not in known.used
     )
     return Reading(Design(name, title, _setting(unit, sections, raw), items, reader.positions, unused), problems)
-
-
-def _count(reader: _Reader, raw: Mapping[str, Any], models: Iterable[str]) -> None:
-    pieces = sum(len(raw[name]) for name in models if isinstance(raw.get(name), list))
-    if pieces > MOST_PIECES:
-        reader.problems.append(
-            Problem(1, "", "", f"{pieces} pieces are more than the {MOST_PIECES} of one design; divide it")
-        )
-    elif not pieces and not reader.problems:
-        listed = ", ".join(f"[[{name}]]" for name in models)
-        reader.problems.append(Problem(1, "", "", f"the design has no piece; add one of {listed}"))
 
 
 def _setting(unit: str, sections: Mapping[str, Any], raw: Mapping[str, Any]) -> Setting:
