@@ -188,5 +188,5 @@ BAD_RUNS = [
     Bad("bay's parity unknown", RUN, 'sag = 350, parity = "any"', 'sag = 350, parity = "all"', "bays[1].parity", "give one of"),
     Bad("bay's fitting unknown", RUN, "fittings = { to = 30 }", 'fittings = { to = "ring" }', "bays[1].fittings.to", "there is no fitting"),
     Bad("bay's key unknown", RUN, "bay = 2,", "bay = 2, color = 1,", "bays[1].color", "is not known"),
-    Bad("saddles later", RUN, 'over = "fixed"', 'over = "fixed"\nfriction = 0.1', "friction", "not solved by this version"),
+    Bad("friction of a tied run", RUN, 'over = "fixed"', 'over = "fixed"\nfriction = 0.1', "friction", "give it with `over ="),
 ]  # fmt: skip

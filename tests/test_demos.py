@@ -73,8 +73,9 @@ def test_the_supports_of_a_demo_carry_its_whole_weight(demo: Path, written: Path
     mass = sum(piece["mass_kg"] for piece in document["pieces"])
     parts = [part for piece in document["pieces"] for part in (piece, *piece.get("bays", ()))]
     carried = sum(load["force_N"] for part in parts for load in part.get("loads", ()))
+    behind = sum(piece.get("counterweight_kg") or 0.0 for piece in document["pieces"])
     assert down == pytest.approx(
-        mass * 9.80665 + carried, rel=0.1
+        (mass + behind) * 9.80665 + carried, rel=0.1
     )  # fittings weigh as their member does, or by their own mass
     level = [sum(support["pull_N"][axis] for support in document["supports"]) for axis in (0, 1)]
     assert math.hypot(*level) < 1e-6 * down
@@ -103,6 +104,20 @@ def test_the_quay_hangs_as_its_scenario_says(written: Path) -> None:
     (plan,) = document["stock_plan"]
     assert (plan["links"], plan["links_lost"]) == (281, 7)
     assert plan["patterns"][0]["length_m"] == pytest.approx(14.628, abs=1e-9)
+
+
+def test_the_handrail_pulls_as_its_counterweight_and_the_rise_say(written: Path) -> None:
+    """By hand: 9 kg at the last saddle, which stands as high as the first; without stretch T changes by w dz alone."""
+    (run,) = figures(written, "rope-walk-handrail")["pieces"]
+    weight = 0.52 * 9.80665
+    assert run["pull_to_N"] == pytest.approx(9 * 9.80665, rel=1e-9)
+    assert run["pull_from_N"] == pytest.approx(9 * 9.80665, rel=1e-9)
+    pulls = [bay["pull_to_N"] for bay in run["bays"]]
+    rises = [0.38, 0.58, 0.58, 0.38, 0.0]
+    assert pulls == pytest.approx([9 * 9.80665 + weight * rise for rise in rises], rel=1e-9)
+    # level between the two crown posts: sag w S^2/8H of the parabola, the catenary's within (w S/H)^2/48
+    crown = run["bays"][2]
+    assert crown["sag_m"] == pytest.approx(weight * 1.8**2 / (8 * crown["pull_horizontal_N"]), rel=1e-3)
 
 
 def _neighbours(bay: Any) -> dict[int, int | None]:  # noqa: ANN401

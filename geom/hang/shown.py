@@ -64,6 +64,7 @@ def bay_facts(bay: Piece) -> Iterator[Said]:
     cuts = [
         Said(f"{cut.links} links") if cut.links is not None else Said("cut {}", (cut.cut_length,)) for cut in bay.cuts
     ]
+    cuts = cuts or [Said("along {}", (bay.figures.pin_to_pin,))]  # of a member over saddles, which is cut as one
     yield Said(" + ".join(cut.text for cut in cuts), tuple(length for cut in cuts for length in cut.lengths))
     takes = [_taken(bay, end) for end in (0, 1)]
     if any(takes):
