@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from tests.bad_designs import Bad
 
-# ruff: noqa: E501 - a table, to be read by its columns
 
 HEAD = """\
 title = "Bad"

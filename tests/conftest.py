@@ -1,4 +1,4 @@
-"""Hypothesis without a clock, so that a busy machine fails no test, and with examples enough for laws of few numbers."""
+"""Hypothesis without a clock, so that a busy machine fails no test; examples enough for laws of few numbers."""
 
 from hypothesis import settings
 

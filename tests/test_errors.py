@@ -36,9 +36,7 @@ def test_an_empty_feature_or_key_leaves_no_gap(feature: str, key: str, rendered:
 
 
 @given(feature=st.text(), key=st.text(), text=st.text(), name=st.text())
-def test_whatever_a_user_wrote_a_problem_is_one_printable_line(
-    feature: str, key: str, text: str, name: str
-) -> None:
+def test_whatever_a_user_wrote_a_problem_is_one_printable_line(feature: str, key: str, text: str, name: str) -> None:
     line = Problem(1, feature, key, text).render(name)
     assert line.isprintable()
     assert len(line.splitlines()) == 1

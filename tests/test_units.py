@@ -203,9 +203,7 @@ def test_no_quantity_is_read_from_what_is_no_finite_number(quantity: Quantity, v
         (length, "3 kg", '"3 kg" is in a unit of mass, not of length; write it like "4.2 m"'),
     ],
 )
-def test_a_refusal_says_what_was_found_and_what_would_be_right(
-    quantity: Quantity, value: str, message: str
-) -> None:
+def test_a_refusal_says_what_was_found_and_what_would_be_right(quantity: Quantity, value: str, message: str) -> None:
     with pytest.raises(ValueError, match=f"^{re.escape(message)}$"):
         quantity(value)
 
