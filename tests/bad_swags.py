@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from tests.bad_designs import Bad
 
-
 HEAD = """\
 title = "Bad"
 unit  = "mm"

@@ -8,6 +8,7 @@ asked for, and the greatest of these pulls makes it the greatest sag, or the low
 from __future__ import annotations
 
 import math
+from collections.abc import Sequence
 from dataclasses import dataclass, fields, replace
 
 import numpy as np
@@ -122,22 +123,23 @@ class Slid:
         """Lengths from support to support, as `pin`, (n,) m."""
         return np.asarray(self.hung.length / self.growth)
 
-    def at(self, *, growth: float, closer: float = 0.0) -> Stretched:
-        """Return the bays at another growth of length, or with the first and the last support each nearer by half."""
-        return bays_of(self.asked, self.pin, growth, closer)
+    def at(self, growths: Sequence[float], closer: Sequence[float]) -> list[Stretched]:
+        """Return the bays in k states, solved together: growths of length, and how much nearer the supports are, m."""
+        return bays_of(self.asked, self.pin, growths, closer)
 
     def of_pins(self, pins: Floats) -> Stretched:
         """Return the bays of members otherwise long, (k, n): as hung, between fixed ends."""
         return saddles.run(line_of(self.asked, self.growth), length=pins * self.growth).bays
 
-    def slipping(self, *, toward_to: bool) -> Stretched:
-        """Return the bays about to slip one way over all saddles, as hung."""
-        line, mu = line_of(self.asked, self.growth), self.asked.friction or 0.0
-        if self.asked.fact == "counterweight":
-            found = saddles.slipping(line, mu, toward_to=toward_to, counterweight=self.asked.hung_weight)
+    def slipping(self) -> tuple[Stretched, Stretched]:
+        """Return the bays about to slip towards the last support over all saddles, and towards the first, as hung."""
+        asked, mu = self.asked, self.asked.friction or 0.0
+        line, both = line_of(asked, self.growth), np.array([mu, -mu])  # slipping back is friction turned round
+        if asked.fact == "counterweight":
+            found = saddles.slipping(line, both, toward_to=True, counterweight=np.full(2, asked.hung_weight))
         else:
-            found = saddles.slipping(line, mu, toward_to=toward_to, length=self.pin * self.growth)
-        return first_row(found)
+            found = saddles.slipping(line, both, toward_to=True, length=np.full(2, self.pin * self.growth))
+        return row(found, 0), row(found, 1)
 
     def value(self, hang: Stretched, pin: float) -> float:
         """Return the fact that was asked for, of solved bays of a length."""
@@ -160,31 +162,36 @@ class Slid:
         pin_, takes, grips = (np.array([value]) for value in (self.pin, asked.takes, asked.grips))
         pin = float(rounded_pins(pin_, takes, grips, self.setting.shop.step)[0])
         rounded = replace(self, pin=pin)
-        return self.value(rounded.at(growth=self.growth), pin) - self.value(self.hung, self.pin)
+        return self.value(rounded.at([self.growth], [0.0])[0], pin) - self.value(self.hung, self.pin)
 
 
-def line_of(asked: Sliding, growth: float, closer: float = 0.0) -> saddles.Line:
-    """Return supports and stock as the solver of saddles takes them.
+def line_of(asked: Sliding, growth: float | Floats, closer: Floats | None = None) -> saddles.Line:
+    """Return supports and stock as the solver of saddles takes them, for one state or for k of them.
 
     Inner supports are pulled alike from both sides and stay; the first and the last lean in by half of `closer` each.
     """
-    spans = asked.spans
-    spans[0] -= 0.5 * closer
-    spans[-1] -= 0.5 * closer
-    return saddles.Line(spans, asked.rises, asked.stock.weight / growth, asked.stiffness)
+    spans = asked.spans if closer is None else np.tile(asked.spans, (len(closer), 1))
+    if closer is not None:
+        spans[:, 0] -= 0.5 * closer
+        spans[:, -1] -= 0.5 * closer
+    weight = np.asarray(asked.stock.weight / growth)
+    return saddles.Line(spans, asked.rises, weight[..., np.newaxis] if weight.ndim else weight, asked.stiffness)
 
 
-def bays_of(asked: Sliding, pin: float, growth: float, closer: float = 0.0) -> Stretched:
+def bays_of(asked: Sliding, pin: float, growths: Sequence[float], closer: Sequence[float]) -> list[Stretched]:
     """Return the bays of a member of a length at the shop's temperature; a counterweight leaves that as it comes."""
-    line = line_of(asked, growth, closer)
+    grown = np.array(growths, dtype=np.float64)
+    line = line_of(asked, grown, np.array(closer, dtype=np.float64))
     if asked.fact == "counterweight":
-        return first_row(saddles.run(line, counterweight=asked.hung_weight))
-    return first_row(saddles.run(line, length=pin * growth))
+        found = saddles.run(line, counterweight=np.full(grown.shape, asked.hung_weight))
+    else:
+        found = saddles.run(line, length=pin * grown)
+    return [row(found, number) for number in range(len(grown))]
 
 
-def first_row(found: saddles.Run) -> Stretched:
-    """Return the bays of the first run, fields of shape (n,)."""
-    return Stretched(*(getattr(found.bays, field.name)[0] for field in fields(Stretched)))
+def row(found: saddles.Run, number: int = 0) -> Stretched:
+    """Return the bays of one run, fields of shape (n,)."""
+    return Stretched(*(getattr(found.bays, field.name)[number] for field in fields(Stretched)))
 
 
 def slackest(asked: Sliding, setting: Setting) -> Stretched:
@@ -208,7 +215,7 @@ def wished(asked: Sliding, setting: Setting) -> float:
         return asked.value * asked.chords
     growth = asked.growth(setting.temperatures[1], setting)
     if asked.fact == "counterweight":
-        hang = first_row(saddles.run(line_of(asked, growth), counterweight=asked.hung_weight))
+        hang = row(saddles.run(line_of(asked, growth), counterweight=asked.hung_weight))
     else:
         hang = _from_start(asked, growth, _start(asked, growth))
     slid = Slid(asked, math.nan, math.nan, 0, hang, setting)
@@ -231,7 +238,7 @@ def made(asked: Sliding, pin: float, setting: Setting) -> Slid:
     if asked.stock.counted:
         count, length = _whole(asked, pin, setting)
     growth = asked.growth(setting.temperatures[1], setting)
-    return Slid(asked, length, pin, count, bays_of(asked, length, growth), setting)
+    return Slid(asked, length, pin, count, bays_of(asked, length, [growth], [0.0])[0], setting)
 
 
 def _whole(asked: Sliding, pin: float, setting: Setting) -> tuple[int, float]:
@@ -273,7 +280,7 @@ def _from_start(asked: Sliding, growth: float, start: float) -> Stretched:
     weight, stiffness = asked.stock.weight / growth, asked.stiffness
     stored = start + weight * float(asked.rises.sum())
     pull = 2.0 * stored / (1.0 + math.sqrt(1.0 + 2.0 * stored / stiffness)) if stored > 0.0 else math.nan
-    return first_row(saddles.run(line_of(asked, growth), counterweight=pull))
+    return row(saddles.run(line_of(asked, growth), counterweight=pull))
 
 
 def _stored(pull: Floats, stiffness: float) -> Floats:

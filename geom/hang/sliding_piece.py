@@ -113,7 +113,7 @@ def _wanted(slid: Slid) -> Quantity:
 
 
 def _states(slid: Slid) -> list[State]:
-    """Return the bays in every case, one solve of the whole member each; wind and persons are left out."""
+    """Return the bays in every case, all solved together; wind and persons are left out."""
     asked, setting = slid.asked, slid.setting
     coldest, as_hung, hottest = setting.temperatures
     wanted: list[tuple[str, float, float]] = [
@@ -123,10 +123,8 @@ def _states(slid: Slid) -> list[State]:
     ]
     if setting.site.support_give:
         wanted.append(("supports give", as_hung, setting.site.support_give))
-    return [
-        _state(slid, case, temperature, slid.at(growth=asked.growth(temperature, setting), closer=give), give)
-        for case, temperature, give in wanted
-    ]
+    hung = slid.at([asked.growth(heat, setting) for _, heat, _ in wanted], [give for *_, give in wanted])
+    return [_state(slid, case, heat, hang, give) for (case, heat, give), hang in zip(wanted, hung, strict=True)]
 
 
 def _state(slid: Slid, case: str, temperature: float, hang: Stretched, give: float) -> State:
@@ -204,7 +202,7 @@ def _figures(slid: Slid, run: RunFigures) -> SaddleFigures:
     asked, hung = slid.asked, slid.hung
     ranges: tuple[Floats | None, Floats | None] = (None, None)
     if asked.friction is not None:
-        both = [slid.slipping(toward_to=way) for way in (True, False)]
+        both = slid.slipping()
         ranges = (
             fixed(sorted(float(one.pulls.at_from[0]) for one in both), 2),
             fixed(sorted(float(one.pulls.at_to[-1]) for one in both), 2),

@@ -11,6 +11,7 @@ from geom.fields import MOST_LENGTH
 from geom.hang.asked import STRONGEST_WIRE
 from geom.hang.refusals import AT_ONE_POINT, LEAST_SLACK, MOST_LINKS
 from geom.hang.sliding import BY_LENGTH, Slid, Sliding, fewest, made, slackest, wished
+from geom.hang.stretched import Stretched
 from geom.registry import Fault, Refusal, refuse
 from geom.setting.options import Setting
 from geom.units import STANDARD_GRAVITY
@@ -57,13 +58,13 @@ def _before(asked: Sliding, setting: Setting) -> Iterator[Refusal]:
 
 def _of_wish(asked: Sliding, pin: float, setting: Setting) -> Iterator[Refusal]:
     """Reasons that the wished length shows: none at all, or more than rests."""
-    slack = slackest(asked, setting)
-    growth = asked.growth(setting.temperatures[1], setting)
-    most = float(slack.length.sum()) / growth
-    if math.isnan(pin) or (asked.fact in BY_LENGTH and not pin < most):
-        deepest = int(np.argmax(slack.sag)) + 1
-        text = f"leaves no rest on the saddles: the member would run into one bay, such as bay {deepest}"
-        yield refuse(asked.fact, f"{text}; give {_limit(asked, most, growth, setting)}")
+    if math.isnan(pin) or asked.fact in BY_LENGTH:
+        slack = slackest(asked, setting)
+        most = float(slack.length.sum()) / asked.growth(setting.temperatures[1], setting)
+        if not pin < most:
+            text = "leaves no rest on the saddles: the member would run into one bay, such as bay"
+            limit = _limit(asked, slack, most, setting)
+            yield refuse(asked.fact, f"{text} {int(np.argmax(slack.sag)) + 1}; give {limit}")
     if not pin <= MOST_LENGTH:
         yield refuse(asked.fact, f"makes the member longer than {setting.stated(MOST_LENGTH)}, over any measure")
     if asked.fact != "links" and asked.stock.counted:
@@ -76,9 +77,9 @@ def _of_wish(asked: Sliding, pin: float, setting: Setting) -> Iterator[Refusal]:
         yield refuse("fittings", f"{text}; give shorter fittings")
 
 
-def _limit(asked: Sliding, most: float, growth: float, setting: Setting) -> str:
+def _limit(asked: Sliding, slack: Stretched, most: float, setting: Setting) -> str:
     """Say what of a fact would rest."""
-    slack, say = slackest(asked, setting), setting.stated
+    say = setting.stated
     match asked.fact:
         case "length":
             return f"less than {say(most)}"
