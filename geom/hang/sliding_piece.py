@@ -147,6 +147,8 @@ def _bay(slid: Slid, number: int, part: Piece, member: Asked, held: Sequence[Sta
     figures: HangingFigures = replace(
         part.figures, sag_per_length=NAN, sag_per_kelvin=NAN, sag_per_support=None, band=None
     )
+    # said of the whole member; under a counterweight no length makes the pull any greater
+    left_out = ("does not reach", "no drag", *(("shallow sag",) if asked.fact == "counterweight" else ()))
     # its length was found, not given: nothing is to be said of what a given one makes of the sag
     found = replace(member, fact="sag", value=figures.sag)
     said = cautions(found, figures, figures.pin_to_pin, slid.setting, cases=cases)
@@ -171,7 +173,7 @@ def _bay(slid: Slid, number: int, part: Piece, member: Asked, held: Sequence[Sta
             replace(pull, vectors=_vectors(slid, number, held, place, to=to))
             for to, pull in zip((False, True), part.pulls, strict=True)
         ),
-        cautions=tuple(one for one in said if one.code not in ("does not reach", "no drag")),
+        cautions=tuple(one for one in said if one.code not in left_out),
     )  # fmt: skip
 
 
