@@ -120,6 +120,23 @@ def test_the_handrail_pulls_as_its_counterweight_and_the_rise_say(written: Path)
     assert crown["sag_m"] == pytest.approx(weight * 1.8**2 / (8 * crown["pull_horizontal_N"]), rel=1e-3)
 
 
+def test_somebody_who_sits_on_a_swag_pulls_the_quays_bollards_as_its_scenario_says(written: Path) -> None:
+    """100 kg, static, the chain's own weight included, the bay alone; worked out twice from the scenario's inputs."""
+    bay = figures(written, "ropewalk-quay")["pieces"][0]["bays"][0]
+    cases = {case["case"]: case for case in bay["cases"]}
+    middle, worst = cases["person at mid"], cases["person at worst end"]
+    assert (middle["standing"], worst["standing"]) == ("misuse", "misuse")
+    assert middle["pull_horizontal_N"] == pytest.approx(1603.0, abs=0.05)
+    assert middle["pull_from_N"] == pytest.approx(1679.4, abs=0.05)
+    assert 0.9 * middle["pull_horizontal_N"] == pytest.approx(1442.7, abs=0.05)
+    assert max(worst["pull_from_N"], worst["pull_to_N"]) == pytest.approx(1686.4, abs=0.05)
+    assert 1000 * worst["mark_m"] == pytest.approx(859, abs=0.5)
+    bollard = figures(written, "ropewalk-quay")["supports"][0]
+    moments = {case["case"]: case["moment_Nm"] for case in bollard["by_case"]}
+    assert moments["person at mid"] == pytest.approx(1442.7, abs=0.05)
+    assert bollard["magnitude_N"] < 30.0, "a misuse is merged into no pull as hung"
+
+
 def _neighbours(bay: Any) -> dict[int, int | None]:  # noqa: ANN401
     return {
         row["count"]: None if row["sag_m"] is None else round(1000 * row["sag_m"]) for row in bay["links"]["neighbours"]
