@@ -471,6 +471,21 @@ OTHERS = [
         lambda: elastic_facts.least_end_pull(1.0, 0.0, 1.0, np.inf),
         "0.754439780769",
     ),
+    _row(
+        "pulley with a reserve on the floor",
+        "Mareno & English 2009, cable over a pulley, least height over half span = min cosh(u)/u; derived, 40 digits",
+        "h/a",
+        lambda: elastic_facts.least_end_pull(2.0, 0.0, 1.0, np.inf),
+        "1.50887956154",
+    ),
+    _row(
+        "two rings on a rough rod, mu = 0.5",
+        "classical statics (S. L. Loney): a ring slips at H = mu V; span mu l asinh(1/mu); derived, 40 digits",
+        "length over greatest span",
+        lambda: elastic_facts.from_pull(0.721817737589, 0.0, 0.5 * 0.5, 1.0, np.inf).length,
+        "1",
+        within=1e-11,
+    ),
 ]
 
 
