@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import json
 import math
+import tomllib
 from pathlib import Path
 from typing import Any
 
@@ -73,12 +74,31 @@ def test_the_supports_of_a_demo_carry_its_whole_weight(demo: Path, written: Path
     mass = sum(piece["mass_kg"] for piece in document["pieces"])
     parts = [part for piece in document["pieces"] for part in (piece, *piece.get("bays", ()))]
     carried = sum(load["force_N"] for part in parts for load in part.get("loads", ()))
+    carried += _spread(demo, document)
     behind = sum(piece.get("counterweight_kg") or 0.0 for piece in document["pieces"])
-    assert down == pytest.approx(
-        (mass + behind) * 9.80665 + carried, rel=0.1
-    )  # fittings weigh as their member does, or by their own mass
+    lying = sum(part["mass_kg"] * part["lying_m"] / part["hung_length_m"] for part in parts if part.get("lying_m"))
+    # fittings weigh as their member does, or by their own mass
+    assert down == pytest.approx((mass + behind - lying) * 9.80665 + carried, rel=0.1)
     level = [sum(support["pull_N"][axis] for support in document["supports"]) for axis in (0, 1)]
     assert math.hypot(*level) < 1e-6 * down
+
+
+def _spread(demo: Path, document: Any) -> float:  # noqa: ANN401 - JSON
+    """What a load spread over the plan comes to, N: as the design has it, over the spans found."""
+    spans = {piece["mark"]: piece.get("span_m") for piece in document["pieces"]}
+    hangings = tomllib.loads(demo.read_text()).get("hanging", [])
+    spread = ((entry["mark"], str(entry["spread"]).removesuffix(" N/m")) for entry in hangings if "spread" in entry)
+    return float(sum(float(load) * spans[mark] for mark, load in spread))
+
+
+def test_what_hangs_and_what_lies_of_the_barrier_chain_are_its_length(written: Path) -> None:
+    """H = w c of the hanging ends; each of them is sqrt(h^2 + 2 h c) long and reaches c acosh(1 + h/c) in (statics)."""
+    barrier = figures(written, "foundry-yard")["pieces"][0]
+    assert barrier["hanging_m"] + barrier["lying_m"] == pytest.approx(barrier["pin_to_pin_m"], rel=1e-9)
+    c = barrier["pull_horizontal_N"] / barrier["used"]["weight_N_per_m"]
+    assert barrier["hanging_m"] / 2 == pytest.approx(math.sqrt(1.4**2 + 2 * 1.4 * c), rel=1e-3)
+    lying = 3.0 - 2 * c * math.acosh(1 + 1.4 / c)
+    assert barrier["lying_m"] == pytest.approx(lying, rel=1e-3)
 
 
 def test_the_quay_hangs_as_its_scenario_says(written: Path) -> None:
