@@ -27,6 +27,7 @@ _MANY = 20  # marks in a view from which on they may be smaller
 _LEADER_RINGS = (2.5, 4.0, 6.0, 9.0)  # distances tried, in heights of the text
 _LEADER_WAYS = 12
 _TIRED = 60  # leaders that found no room one after another: the view is full, the rest is not tried
+_FULL = 0.5  # of a view's room: marks of one kind that would cover more are not tried, as next to none would find room
 _SLIDES = (0.0, 1.5, -1.5, 3.0, -3.0)  # along a sloping member, in heights of the text
 
 # the eight places: above right first, where it is read first (common practice of map lettering)
@@ -39,10 +40,20 @@ def place(wanted: Sequence[Wanted], ground: Ground, sizes: Sizes) -> Marks:
     many = len(wanted) > _MANY
     _each(_of(wanted, _HEAD), ground, sizes, marks, many=many)
     for role, placed in _ALIKE.items():
-        left = placed(_of(wanted, (role,)), ground, sizes, marks)
+        left = placed(_told(_of(wanted, (role,)), ground, sizes, marks), ground, sizes, marks)
         _led(left, sizes.small if many else sizes.note, ground, sizes, marks)
-    _each(_of(wanted, _TAIL), ground, sizes, marks, many=many)
+    _each(_told(_of(wanted, _TAIL), ground, sizes, marks), ground, sizes, marks, many=many)
     return marks
+
+
+def _told(wanted: list[Wanted], ground: Ground, sizes: Sizes, marks: Marks) -> list[Wanted]:
+    """Return the marks, or none of them, all dropped, where they are a crowd: thousands of nodes on one sheet."""
+    halves = [tag_of(mark, sizes.small, sizes.small).half for mark in wanted]
+    left, bottom, right, top = ground.box
+    if 4.0 * sum(wide * high for wide, high in halves) <= _FULL * (right - left) * (top - bottom):
+        return wanted
+    marks.dropped += len(wanted)
+    return []
 
 
 def _of(wanted: Sequence[Wanted], roles: Sequence[str]) -> list[Wanted]:

@@ -138,9 +138,19 @@ def _candidates(found: Contents) -> Iterator[Scale]:
 def _unmarked(found: Contents, scale: Scale, on: Sheet, *, feed: bool = False) -> Arranged | None:
     """Everything but the marks in place at a scale, if it fits: first tried with no more than the geometry."""
     print_ = Print(scale.ratio / 1000, PAPER, found.wording)
-    if _arranged(found, scale, (_bare(found, print_), None), on, feed=feed) is None:
+    bare = _bare(found, print_)
+    if _too_large(bare, found.site, print_, on, feed=feed):
+        return None
+    if _arranged(found, scale, (bare, None), on, feed=feed) is None:
         return None
     return _arranged(found, scale, _panels(found, print_, marks="none"), on, feed=feed)
+
+
+def _too_large(bare: Sequence[Panel], site: Site | None, print_: Print, on: Sheet, *, feed: bool) -> bool:
+    """Whether views together, or the plan, are larger than the paper: seen without arranging thousands of them."""
+    together = sum((panel.box[2] - panel.box[0]) * (panel.box[3] - panel.box[1]) for panel in bare)
+    left, bottom, right, top = printed(site.box, print_.per) if site else (0.0, 0.0, 0.0, 0.0)
+    return (not feed and together > on.width * on.height) or right - left > on.width or top - bottom > on.height
 
 
 def _arranged(  # noqa: PLR0913 - what an arrangement depends on

@@ -1,10 +1,11 @@
 """A view of one piece as it is printed at one scale: its geometry, symbols, dimensions, marks and title."""
 
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, replace
 from typing import Literal
 
 import numpy as np
+from numpy.typing import NDArray
 
 from export.picture import labels, symbols
 from export.picture.dimensions import Measure, measures, outside
@@ -176,11 +177,21 @@ def _held_from_above(shown: Seen, places: Floats) -> list[bool]:
     tips, nexts = np.array([end[0] for end in ends]), np.array([end[1] for end in ends])
     steps = nexts - tips
     falls = steps[:, 1] / np.maximum(np.hypot(steps[:, 0], steps[:, 1]), 1e-12)
-    found = []
-    for place in places:
-        here = np.abs(tips - place).max(axis=1) < _END
-        found.append(bool(falls[here].sum() < 0 if here.any() else place[1] >= middle))
-    return found
+    return [
+        bool(falls[here].sum() < 0 if len(here) else place[1] >= middle)
+        for place, here in zip(places, _near(places, tips), strict=True)
+    ]
+
+
+def _near(places: Floats, tips: Floats) -> Iterator[NDArray[np.int64]]:
+    """Yield the tips (m, 2) at each place (n, 2), looked for among those that are as far right: sorted, for nets."""
+    order = np.argsort(tips[:, 0], kind="stable")
+    across = tips[order, 0]
+    firsts = np.searchsorted(across, places[:, 0] - _END)
+    lasts = np.searchsorted(across, places[:, 0] + _END)
+    for place, first, last in zip(places, firsts.tolist(), lasts.tolist(), strict=True):
+        beside = order[first:last]
+        yield np.sort(beside[np.abs(tips[beside] - place).max(axis=1) < _END])
 
 
 def _symbol(  # noqa: PLR0913 - what a symbol depends on
