@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from collections import defaultdict
 from collections.abc import Iterable, Iterator, Sequence
 
 import numpy as np
@@ -66,6 +67,7 @@ def _plan_rows(plan: StockPlan) -> Iterator[tuple[StockPlan, StockPattern | None
 def supports(result: Result) -> Table:
     """Return the pulls on supports: a row for each support and case."""
     rows = [(support, case) for support in result.supports for case in support.by_case]
+    codes = {support.mark: code for support, code in zip(result.supports, _codes(result), strict=True)}
     at = np.array([support.at for support, _ in rows], dtype=np.float64).reshape(-1, 3)
     pull = np.array([case.pull for _, case in rows], dtype=np.float64).reshape(-1, 3)
     return Table(
@@ -79,14 +81,19 @@ def supports(result: Result) -> Table:
             _numbers("magnitude", _NEWTONS, "pull", (case.magnitude for _, case in rows)),
             _numbers("moment", Unit("Nm"), "moment at the foot", (case.moment for _, case in rows)),
             _text("pieces", "pieces", (", ".join(support.pieces) for support, _ in rows)),
-            _text("cautions", "cautions on them", (_codes(result, support.pieces) for support, _ in rows)),
+            _text("cautions", "cautions on them", (codes[support.mark] for support, _ in rows)),
         ),
     )
 
 
-def _codes(result: Result, pieces: Sequence[str]) -> str:
-    """Return the codes of the cautions on some pieces; their words are in the figures and the workbook."""
-    return ", ".join(dict.fromkeys(caution.code for caution in result.cautions if caution.piece in pieces))
+def _codes(result: Result) -> Iterator[str]:
+    """Yield for each support the codes of the cautions on its pieces; their words are in the figures."""
+    of_piece: dict[str, list[tuple[int, str]]] = defaultdict(list)
+    for number, caution in enumerate(result.cautions):
+        of_piece[caution.piece].append((number, caution.code))
+    for support in result.supports:
+        found = sorted(entry for piece in support.pieces for entry in of_piece[piece])
+        yield ", ".join(dict.fromkeys(code for _, code in found))
 
 
 def cautions(result: Result) -> Table:
