@@ -9,9 +9,11 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from geom.design.reader import read
 from geom.hang.person import OnIt
 from geom.hang.wind import InWind
 from geom.result import Piece
+from geom.solve import solve
 from tests.test_hanging_stretch import case, design, figures, hung
 
 spans = st.floats(2.0, 40.0)
@@ -316,3 +318,28 @@ def test_a_runs_loads_stand_in_its_unfolded_elevation_at_their_plan_distances() 
     assert steps["to B"] == pytest.approx(3.0, abs=1e-9)
     places = [label.at for label in run.labels if label.role == "load"]
     assert places[1][:2] == pytest.approx([4.0, 3.0], abs=1e-9)
+
+
+def _codes(text: str) -> dict[str, str]:
+    reading = read(text, "cautions")
+    assert reading.design is not None
+    result = solve(reading.design).result
+    assert result is not None
+    return {caution.code: caution.text for caution in result.cautions}
+
+
+def test_a_person_who_breaks_the_chain_is_cautioned_by_the_case() -> None:
+    """DIN 5685-1 form A, 2 mm: 1.25 kN at break; 90 kg on a shallow swag pull more, its own weight far less."""
+    swag = (
+        'unit = "m"\n[[hanging]]\nmark = "S"\nfrom = [0, 0, 1]\nto = [1.5, 0, 1]\nstock = "DIN 5685 A-2"\nsag = 0.18\n'
+    )
+    assert "over the breaking load" not in _codes(swag)
+    said = _codes(swag + 'check_load = "90 kg"\n')["over the breaking load"]
+    assert "person" in said
+    assert "1.25 kN" in said
+
+
+def test_a_wire_that_only_stretching_makes_reach_is_said_to_be_shorter_than_its_chord() -> None:
+    wire = 'unit = "m"\n[[hanging]]\nmark = "W"\nfrom = [0, 0, 5]\nto = [22, 0, 5.4]\nstock = "7x19-5"\nlength = {}\n'
+    assert "stretched to reach" in _codes(wire.format(21.9))
+    assert "stretched to reach" not in _codes(wire.format(22.1))

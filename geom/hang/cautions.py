@@ -32,6 +32,7 @@ def cautions(
         ),
     ]  # fmt: skip
     found += _stock(member, figures)
+    found += _breaking(member, figures, cases or ())
     found += _stiff(member, setting, stretches=cases is not None)
     links = figures.links
     if setting.drawing.links == "rigid" and links is not None and not math.isnan(links.rigid_off):
@@ -42,7 +43,7 @@ def cautions(
         found.append(
             Caution("rigid links", member.mark, text, "moments of a link: tan(theta_k) = (V0 + (k - 1/2) W)/H")
         )
-    if member.fact == "length" and figures.span:
+    if member.fact == "length" and figures.span and math.isnan(figures.lying):
         found.append(_given_length(member, figures, setting))
     if weight and figures.pull_horizontal > weight:
         found.append(
@@ -121,6 +122,13 @@ def _stiff(member: Asked, setting: Setting, *, stretches: bool) -> list[Caution]
 def _given_length(member: Asked, figures: HangingFigures, setting: Setting) -> Caution:
     """A length is often worked out as span plus sag, which gives a far greater sag: said wherever a length is given."""
     rule = member.value - figures.span
+    chord = math.hypot(figures.span, figures.level_difference)
+    if member.value <= chord:
+        text = (
+            f"A length of {setting.stated(member.value)} is shorter than the {setting.stated(chord)} between its "
+            f"supports: it reaches by stretching alone, and pulls {figures.pull_horizontal:.4g} N level."
+        )
+        return Caution("stretched to reach", member.mark, text, "Irvine, Cable Structures, 1981, ch. 1")
     text = (
         f"A length of {setting.stated(member.value)} over a span of {setting.stated(figures.span)} gives a sag of "
         f"{_length(figures.sag, setting)}"
@@ -141,14 +149,24 @@ def _stock(member: Asked, figures: HangingFigures) -> list[Caution]:
             "the user certifies. No factor is applied: the design factor is the engineer's. " + stock.scope
         )
         found.append(Caution("use of capacity", member.mark, text.strip(), stock.source))
-    pull = max(figures.pull_from, figures.pull_to)
-    if stock.breaking_load is not None and pull > stock.breaking_load:
-        text = (
-            f"The greatest end pull, {pull / 1000:.3g} kN, is over the {stock.breaking_load / 1000:.3g} kN at which "
-            f"{stock.name} breaks when new: it cannot hang so."
-        )
-        found.append(Caution("over the breaking load", member.mark, text, stock.source))
     return found
+
+
+def _breaking(member: Asked, figures: HangingFigures, cases: Sequence[Case]) -> list[Caution]:
+    """A pull over the load at which the stock breaks, in any case looked at, certified or not."""
+    stock = member.stock
+    if stock.breaking_load is None:
+        return []
+    pulls = {"as hung": max(figures.pull_from, figures.pull_to)}
+    pulls |= {case.case: max(case.pull_from, case.pull_to) for case in cases if not math.isnan(case.pull_from)}
+    worst = max(pulls, key=lambda case: pulls[case])
+    if not pulls[worst] > stock.breaking_load:
+        return []
+    text = (
+        f"The greatest end pull, {pulls[worst] / 1000:.3g} kN in the case {worst}, is over the "
+        f"{stock.breaking_load / 1000:.3g} kN at which {stock.name} breaks when new."
+    )
+    return [Caution("over the breaking load", member.mark, text, stock.source)]
 
 
 def _out_of_reach(member: Asked, figures: HangingFigures, wished: float, setting: Setting) -> Caution | None:
